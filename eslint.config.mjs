@@ -46,6 +46,8 @@ const config = tseslint.config(
     files: ['*.ts', '*.mts', '*.mjs', 'db/migrations/**', 'proxy.ts', 'instrumentation.ts'],
     rules: { 'no-restricted-syntax': ['error', enumBan] },
   },
+  // A migration is SQL, kept whole.
+  { files: ['db/migrations/**'], rules: { 'max-lines': 'off' } },
   { files: ['lib/config/env.ts'], rules: { 'no-restricted-syntax': ['error', defaultBan, enumBan] } },
   {
     files: ['tests/**', 'fake-services/**', 'lib/cli/**'],

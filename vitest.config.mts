@@ -29,7 +29,7 @@ export default defineConfig({
           name: 'integration',
           include: ['tests/integration/**/*.test.ts'],
           environment: 'node',
-          globalSetup: ['tests/support/global-setup.ts'],
+          globalSetup: ['tests/support/cluster.ts'],
           maxWorkers: 2,
           testTimeout: 30_000,
           hookTimeout: 60_000,

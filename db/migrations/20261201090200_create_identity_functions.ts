@@ -135,6 +135,7 @@ export async function up(knex: Knex): Promise<void> {
     -- A new person gets the name and password given; a person already here must have signed in (person not null).
     create function take_invitation(hash text, new_person uuid, person_name text, new_password_hash text, signed_in uuid) returns table (person_id uuid, shop_id uuid)
       language plpgsql security definer set search_path = public, pg_temp as $$
+    #variable_conflict use_column
     declare taken invitations; who uuid;
     begin
       update invitations i set used_at = now()

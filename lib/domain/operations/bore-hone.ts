@@ -1,11 +1,15 @@
 import { cylinders } from '@/lib/domain/builds/features';
+import {
+  BORE_FIELDS,
+  type BoreKnown,
+  HONE_FIELDS,
+  type HoneKnown,
+} from '@/lib/domain/operations/bore-hone-fields';
 import { largest, less, plus, smallest, taken } from '@/lib/domain/operations/figures';
 import {
   type Check,
   type CleanUp,
-  type Fields,
   type Figure,
-  type Known,
   operation,
   type Print,
   type Setting,
@@ -19,9 +23,8 @@ import {
   subtract,
   times,
 } from '@/lib/domain/quantity/length';
-import { parseLength } from '@/lib/domain/quantity/parse-length';
+import { lengthOf } from '@/lib/domain/quantity/parse-length';
 
-const COMMON = 'common practice, no source';
 const POSITIONS = [
   'Top across',
   'Top along',
@@ -30,94 +33,6 @@ const POSITIONS = [
   'Bottom across',
   'Bottom along',
 ] as const;
-
-const BORE_FIELDS = {
-  standard: { quantity: 'length', label: 'Standard bore', per: 'line', plausible: ['1', '10'] },
-  oversize: { quantity: 'length', label: 'Oversize', per: 'line', plausible: ['.0', '.13'] },
-  found: {
-    quantity: 'length',
-    label: 'Cylinders as found',
-    per: 'position',
-    rows: 'cylinders',
-    condition: 'across the crank and along it; top under the ridge, middle, bottom',
-    optional: true,
-    plausible: ['1', '10'],
-    spread: '.010',
-  },
-  stock: {
-    quantity: 'length',
-    label: 'Leave for the hone',
-    per: 'line',
-    plausible: ['.001', '.012'],
-    fallback: { value: '.003', source: COMMON },
-  },
-  boreLimit: {
-    quantity: 'length',
-    label: 'Bored, plus and minus',
-    per: 'line',
-    plausible: ['.0001', '.002'],
-    fallback: { value: '.0005', source: COMMON },
-  },
-  allowance: {
-    quantity: 'length',
-    label: 'Metal that must come off to be clean, on diameter',
-    per: 'line',
-    plausible: ['.0', '.01'],
-    fallback: { value: '.002', source: COMMON },
-  },
-} as const satisfies Fields;
-
-const HONE_FIELDS = {
-  pistons: {
-    quantity: 'length',
-    label: 'Pistons',
-    per: 'feature',
-    rows: 'cylinders',
-    condition: 'at the maker’s gauge point, square to the pin, part cool',
-    plausible: ['1', '10'],
-    spread: '.003',
-  },
-  plate: {
-    quantity: 'choice',
-    label: 'Torque plate',
-    per: 'line',
-    choices: [
-      { value: 'on', label: 'Plate on, gasket and bolts as run' },
-      { value: 'off', label: 'Without a plate' },
-    ],
-    fallback: { value: 'on', source: 'house default' },
-  },
-  fit: {
-    quantity: 'choice',
-    label: 'Fit',
-    per: 'line',
-    choices: [
-      { value: 'one', label: 'One size for all, from the largest piston' },
-      { value: 'each', label: 'Each hole to its own piston' },
-    ],
-    fallback: { value: 'one', source: 'house default' },
-  },
-  least: {
-    quantity: 'length',
-    label: 'Piston clearance, at least',
-    per: 'line',
-    plausible: ['.0003', '.012'],
-  },
-  most: {
-    quantity: 'length',
-    label: 'Piston clearance, at most',
-    per: 'line',
-    optional: true,
-    plausible: ['.0005', '.02'],
-  },
-  honeLimit: {
-    quantity: 'length',
-    label: 'Limit above the size',
-    per: 'line',
-    plausible: ['.0001', '.002'],
-    fallback: { value: '.0005', source: COMMON },
-  },
-} as const satisfies Fields;
 
 const CAUTIONS = [
   'Boring bars and hones catch clothing and hands. Clamp the block, keep guards on.',
@@ -231,9 +146,6 @@ export const BORE_AND_HONE = operation({
     'As boring and as honing. The bar’s size is worked from the size to be honed, less the stock; both are repeated back.',
 });
 
-type BoreKnown = Known<typeof BORE_FIELDS>;
-type HoneKnown = Known<typeof HONE_FIELDS>;
-
 function boredSize(known: BoreKnown, finish: Figure): Figure {
   return less('Bore to', finish, known.length('stock'));
 }
@@ -305,11 +217,7 @@ function stockLeft(known: BoreKnown & HoneKnown, honed: readonly Size[], bored: 
   };
 }
 
-const STEPS = ['.010', '.020', '.030', '.040'].map((text) => {
-  const parsed = parseLength(text, 'in');
-  if (!parsed.ok) throw new RangeError(text);
-  return parsed.value;
-});
+const STEPS = ['.010', '.020', '.030', '.040'].map(lengthOf);
 
 /** Common practice: a hole cleans up even at largest found + stock, one-sided at standard + 2 × wear + stock. */
 function cleanUp(known: BoreKnown): CleanUp[] {

@@ -76,7 +76,10 @@ function readBox(box: Box): void {
     if (text === '' && !box.field.optional && !box.field.fallback) box.missing.push(box.path);
     return;
   }
-  if (text === '') return readFallback(box);
+  if (text === '') {
+    readFallback(box);
+    return;
+  }
   const parsed = parseLength(text, box.unit);
   if (!parsed.ok) {
     box.problems[box.path] = LENGTH_PROBLEM_WORDS[parsed.problem];

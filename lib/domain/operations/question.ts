@@ -1,6 +1,6 @@
 import type { Figure } from '@/lib/domain/operations/operation';
 import { type Length, type LengthUnit, magnitude, nanometres, subtract } from '@/lib/domain/quantity/length';
-import { parseLength } from '@/lib/domain/quantity/parse-length';
+import { lengthOf, parseLength } from '@/lib/domain/quantity/parse-length';
 import { printNear } from '@/lib/domain/quantity/print-length';
 
 /** Something typed that is probably not what was measured. */
@@ -18,7 +18,7 @@ interface Box {
 }
 
 /** Steps by which shells are made under: with the wrong shells in, a bore is off by about one of these. */
-const SHELL_STEPS = ['.010 in', '.020 in', '.030 in', '0.25 mm', '0.50 mm', '0.75 mm'].map(must);
+const SHELL_STEPS = ['.010 in', '.020 in', '.030 in', '0.25 mm', '0.50 mm', '0.75 mm'].map(lengthOf);
 
 /** Questions values outside the range that such a size can have. */
 export function questionRange(
@@ -26,7 +26,7 @@ export function questionRange(
   [low, high]: readonly [string, string],
   unit: LengthUnit,
 ): Question[] {
-  const [least, most] = [must(`${low} in`), must(`${high} in`)];
+  const [least, most] = [lengthOf(`${low} in`), lengthOf(`${high} in`)];
   return boxes.flatMap(({ path, figure }) => {
     if (figure.value >= least && figure.value <= most) return [];
     const text = textOf(figure);
@@ -40,7 +40,7 @@ export function questionRange(
 /** Questions values that stand further from the middle of their column than wear could put them. */
 export function questionColumn(boxes: readonly Box[], spread: string, unit: LengthUnit): Question[] {
   if (boxes.length < 3) return [];
-  const allowed = must(`${spread} in`);
+  const allowed = lengthOf(`${spread} in`);
   const middle = median(boxes.map(({ figure }) => figure.value));
   return boxes.flatMap(({ path, figure }) => {
     const away = subtract(figure.value, middle);
@@ -48,7 +48,8 @@ export function questionColumn(boxes: readonly Box[], spread: string, unit: Leng
     const text = textOf(figure);
     const far = `${text} is ${printNear(magnitude(away), unit)} ${away > 0 ? 'more' : 'less'} than its neighbours`;
     const meant = slips(text).find((slip) => near(slip, unit, middle, allowed));
-    const step = away > 0 && SHELL_STEPS.some((shell) => magnitude(subtract(away, shell)) < must('.0012 in'));
+    const step =
+      away > 0 && SHELL_STEPS.some((shell) => magnitude(subtract(away, shell)) < lengthOf('.0012 in'));
     const words = step ? `${far}, about one undersize: were the standard shells still in?` : `${far}.`;
     return [{ path, text, words, ...(meant === undefined ? {} : { meant }) }];
   });
@@ -67,7 +68,7 @@ function slips(text: string): string[] {
     { length: Math.max(0, digits.length - 1) },
     (_pair, i) => `${digits.slice(0, i)}${digits[i + 1] ?? ''}${digits[i] ?? ''}${digits.slice(i + 2)}`,
   ).flatMap((figures) => write(figures, point));
-  const wrong = [...digits].flatMap((digit, i) =>
+  const wrong = Array.from(digits).flatMap((digit, i) =>
     [-1, 1].flatMap((by) => {
       const other = Number(digit) + by;
       return other < 0 || other > 9
@@ -101,10 +102,4 @@ function median(values: readonly Length[]): Length {
 
 function textOf(figure: Figure): string {
   return figure.from.is === 'typed' ? figure.from.text : '';
-}
-
-function must(text: string): Length {
-  const parsed = parseLength(text, 'in');
-  if (!parsed.ok) throw new RangeError(`${text}: ${parsed.problem}`);
-  return parsed.value;
 }

@@ -89,3 +89,10 @@ function exactly(sign: string, numerator: bigint, denominator: bigint): Result<L
   if (value > 10_000_000_000) return fail('out_of_range');
   return ok(nanometres(sign === '-' && value !== 0 ? -value : value));
 }
+
+/** A size that the code itself writes down. @throws RangeError when it is not one: a bug. */
+export function lengthOf(text: string): Length {
+  const parsed = parseLength(text, 'in');
+  if (!parsed.ok) throw new RangeError(`${text}: ${parsed.problem}`);
+  return parsed.value;
+}
