@@ -6,6 +6,7 @@ export const ERROR_STATUS = {
   not_found: 404,
   conflict: 409,
   stale: 412,
+  version_required: 428,
   rate_limited: 429,
   unavailable: 503,
 } as const;

@@ -41,9 +41,11 @@ async function replay<T>(
   actor: Actor,
   known: { key: string; route: string; fingerprint: string },
 ): Promise<T> {
-  const row = (await tx('idempotency_keys')
+  const row = await tx<{ person_id: string; route: string; key: string; fingerprint: string; answer: T }>(
+    'idempotency_keys',
+  )
     .where({ person_id: actor.personId, route: known.route, key: known.key })
-    .first('fingerprint', 'answer')) as { fingerprint: string; answer: T } | undefined;
+    .first('fingerprint', 'answer');
   if (row?.fingerprint !== known.fingerprint) {
     throw new AppError('invalid', 'This was sent before with other content. Load the page again.');
   }

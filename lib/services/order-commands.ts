@@ -136,8 +136,9 @@ async function write(tx: Tx, doing: Doing, decision: Decision): Promise<void> {
 
 /** The side that has a new step is told; a quote's last day sends a task. */
 async function tell(tx: Tx, { side, facts, command }: Doing, decision: Decision): Promise<void> {
-  const other = side === 'sender' ? facts.partner : facts.sender;
-  const step = side === 'sender' ? decision.stand.partnerStep : decision.stand.senderStep;
+  const isSender = side === 'sender';
+  const other = isSender ? facts.partner : facts.sender;
+  const step = isSender ? decision.stand.partnerStep : decision.stand.senderStep;
   if (other && (step !== null || ALWAYS_TOLD.has(command.do))) {
     const about = {
       shopId: other.shopId,
@@ -148,14 +149,17 @@ async function tell(tx: Tx, { side, facts, command }: Doing, decision: Decision)
     };
     await tellShop(tx, about, permissionFor(step));
   }
-  if (command.do === 'quote' && command.validUntil !== null) {
-    const revision = decision.facts.quotes.at(-1)?.revision ?? 0;
-    const ref = { orderId: facts.id, revision, shopId: facts.partner?.shopId };
-    await putTask(tx, 'expire_quote', ref, {
-      key: `quote-${facts.id}-${revision}`,
-      runAt: `${command.validUntil}T23:59:59Z`,
-    });
-  }
+  if (command.do === 'quote' && command.validUntil !== null)
+    await letItExpire(tx, decision.facts, command.validUntil);
+}
+
+async function letItExpire(tx: Tx, facts: Facts, validUntil: string): Promise<void> {
+  const revision = facts.quotes.at(-1)?.revision ?? 0;
+  const ref = { orderId: facts.id, revision, shopId: facts.partner?.shopId };
+  await putTask(tx, 'expire_quote', ref, {
+    key: `quote-${facts.id}-${revision}`,
+    runAt: `${validUntil}T23:59:59Z`,
+  });
 }
 
 const ALWAYS_TOLD = new Set<Command['do']>([

@@ -1,7 +1,7 @@
 import { randomUUID } from 'node:crypto';
 import { beforeAll, describe, expect, it } from 'vitest';
 import { runOrderCommand } from '@/lib/services/order-commands';
-import { readAsSuperuser, useDatabase } from '../support/database';
+import { readAsSuperuser, ownDatabase } from '../support/database';
 import {
   buildDraft,
   handOver,
@@ -14,7 +14,7 @@ import {
 } from '../support/orders';
 import { buildShop } from '../support/shops';
 
-const database = useDatabase();
+const database = ownDatabase();
 
 interface OrderState {
   status: string;
@@ -134,7 +134,7 @@ describe('a whole work order', () => {
       'select seq from feed where shop_id = $1 order by seq',
       [order.partner.shopId],
     );
-    expect(feed.map(({ seq }) => Number(seq))).toEqual(feed.map((_row, index) => index + 1));
+    expect(feed.map(({ seq }) => seq)).toEqual(feed.map((_row, index) => index + 1));
   });
 });
 

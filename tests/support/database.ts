@@ -19,7 +19,7 @@ const SETTINGS = {
 };
 
 /** Gives the test file a PostgreSQL database of its own, a copy of the migrated template. */
-export function useDatabase(): { readonly ownerUrl: () => string; readonly superuserUrl: () => string } {
+export function ownDatabase(): { readonly ownerUrl: () => string; readonly superuserUrl: () => string } {
   const name = `test_${randomBytes(6).toString('hex')}`;
   beforeAll(async () => {
     await onCluster((client) =>

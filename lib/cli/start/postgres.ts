@@ -140,7 +140,7 @@ function spawnServer(
       cwd: '/',
       detached: true,
       stdio: 'ignore',
-      env: { PATH: process.env['PATH'], LC_ALL: 'C.UTF-8' },
+      env: { ...process.env, LC_ALL: 'C.UTF-8' },
     },
   );
 }
