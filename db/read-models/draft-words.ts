@@ -4,6 +4,8 @@ import type { Actor } from '@/lib/domain/actor';
 
 /** What a draft's title and search words are made of. */
 export interface DraftWords {
+  /** The one build that all the parts belong to, if they do. */
+  readonly buildId: string | null;
   readonly engine: string;
   readonly partnerName: string;
   readonly parts: readonly {
@@ -19,17 +21,17 @@ export async function loadDraftWords(
   tx: Tx,
   actor: Actor,
   chosen: {
-    readonly buildId: string | null;
     readonly partnerShopId: string | null;
     readonly partIds: readonly string[];
   },
 ): Promise<DraftWords> {
   const { rows } = await tx.raw<{ rows: DraftWords[] }>(
-    `select coalesce((select engine from builds where id = ? and shop_id = ?), '') as engine,
+    `with chosen as (select p.id, p.kind, p.stamp, p.maker_no, p.build_id from parts p where p.id = any (?) and p.shop_id = ?),
+       one_build as (select min(build_id::text)::uuid as id from chosen having count(distinct build_id) = 1 and count(*) = count(build_id))
+     select (select id from one_build) as "buildId", coalesce((select engine from builds b join one_build o on o.id = b.id), '') as engine,
        coalesce((select name from shops where id = ?), '') as "partnerName",
-       coalesce((select json_agg(json_build_object('id', id, 'kind', kind, 'stamp', stamp, 'makerNo', maker_no) order by kind, id)
-         from parts where id = any (?) and shop_id = ?), '[]') as parts`,
-    [chosen.buildId, actor.shopId, chosen.partnerShopId, [...chosen.partIds], actor.shopId],
+       coalesce((select json_agg(json_build_object('id', id, 'kind', kind, 'stamp', stamp, 'makerNo', maker_no) order by kind, id) from chosen), '[]') as parts`,
+    [[...chosen.partIds], actor.shopId, chosen.partnerShopId],
   );
-  return rows[0] ?? { engine: '', partnerName: '', parts: [] };
+  return rows[0] ?? { buildId: null, engine: '', partnerName: '', parts: [] };
 }

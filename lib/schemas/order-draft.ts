@@ -10,7 +10,6 @@ const optionalId = z
 /** A new work order, as its form sends it. Only sending needs everything to be there. */
 export const draftSchema = z.object({
   partnerShopId: optionalId,
-  buildId: optionalId,
   partIds: z.array(z.uuid()).min(1, 'Choose at least one part.').max(30),
   operations: z
     .array(z.string().refine((key) => findOperation(key) !== undefined, 'Choose again.'))

@@ -74,7 +74,7 @@ async function writeDraft(
     input.reference,
     ...known.parts.flatMap((part) => [part.stamp, part.makerNo]),
   ]);
-  await insertDraft(tx, actor, { ...input, id, title, words, copiedFromId: null });
+  await insertDraft(tx, actor, { ...input, id, title, words, buildId: known.buildId, copiedFromId: null });
   await insertOrderParts(tx, id, input.partIds);
   const lines = operations.map((operation, index): DraftLine => {
     const fitting = known.parts.filter((part) => fits(operation.part, part.kind));

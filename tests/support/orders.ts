@@ -51,7 +51,6 @@ export async function buildDraft(
     {
       ...{
         partnerShopId: partner.shopId,
-        buildId: build.id,
         partIds: [part.id],
         operations: [...operations],
         neededBackOn: null,

@@ -1,0 +1,57 @@
+import { Empty } from '@/components/ui/empty';
+import { begin } from '@/db/client';
+import { loadBuilds } from '@/db/read-models/builds';
+import { now } from '@/lib/adapters/clock';
+import { requirePageTicket } from '@/lib/auth/ticket';
+import { sayDay } from '@/lib/forms/say';
+
+export const metadata = { title: 'Builds' };
+
+export default async function BuildsPage() {
+  const builds = await begin(await requirePageTicket(), loadBuilds);
+  const year = now().getUTCFullYear();
+  return (
+    <main className="page">
+      <div className="mb-4 flex items-baseline">
+        <h1>Builds</h1>
+        <a href="/builds/new" className="btn ml-auto">
+          New build
+        </a>
+      </div>
+      {builds.length === 0 ? (
+        <Empty title="No builds yet">
+          A build is one engine: how it is made, its parts, and the work they need.
+        </Empty>
+      ) : (
+        <div className="sheet overflow-x-auto">
+          <table className="w-full text-[15px]">
+            <thead>
+              <tr className="border-b border-rule text-left text-[13px] text-ink-3">
+                <th className="px-4 py-2 font-medium">Build</th>
+                <th className="px-4 py-2 font-medium">Engine</th>
+                <th className="px-4 py-2 font-medium">Customer</th>
+                <th className="px-4 py-2 font-medium">Parts</th>
+                <th className="px-4 py-2 font-medium">Open orders</th>
+                <th className="px-4 py-2 font-medium">Needed</th>
+              </tr>
+            </thead>
+            <tbody>
+              {builds.map((build) => (
+                <tr key={build.id} className="border-b border-rule-2">
+                  <th scope="row" className="px-4 py-2.5 text-left">
+                    <a href={`/builds/${build.id}`}>B-{build.number}</a>
+                  </th>
+                  <td className="px-4">{build.engine}</td>
+                  <td className="px-4">{build.customerName}</td>
+                  <td className="num px-4">{build.parts}</td>
+                  <td className="num px-4">{build.openOrders}</td>
+                  <td className="px-4">{build.neededOn === null ? '' : sayDay(build.neededOn, year)}</td>
+                </tr>
+              ))}
+            </tbody>
+          </table>
+        </div>
+      )}
+    </main>
+  );
+}

@@ -1,0 +1,46 @@
+'use server';
+
+import { revalidatePath } from 'next/cache';
+import { z } from 'zod';
+import { action } from '@/lib/http/action';
+import { orderFormSchema, wordsSchema } from '@/lib/schemas/order-forms';
+import { runOrderCommand } from '@/lib/services/order-commands';
+
+const moveSchema = orderFormSchema.extend({
+  kind: z.enum(['sent', 'checked_in', 'sent_back', 'received']),
+  partId: z.uuid(),
+  pieces: z
+    .string()
+    .trim()
+    .regex(/^[1-9]\d{0,2}$/, 'Count the pieces.')
+    .transform(Number),
+  stamps: z
+    .string()
+    .trim()
+    .max(400)
+    .transform((text) => (text === '' ? [] : text.split(/[\s,]+/))),
+  kit: z.array(z.string().max(40)),
+  carrier: wordsSchema,
+  condition: wordsSchema,
+  occurredAt: z.iso.datetime(),
+  replacesId: z
+    .string()
+    .optional()
+    .transform((id) => id || null),
+});
+
+/** Hands a part over, checks it in, sends it back or receives it; or puts an earlier entry right. */
+export const movePartAction = action(
+  moveSchema,
+  async ({ data, ask }) => {
+    const { orderId, requestKey, kind, partId, pieces, stamps, kit, carrier, condition, replacesId } = data;
+    // The entry takes the form's own key for its id: the same form sent twice asks for the same thing.
+    const part = { id: requestKey, partId, pieces, stamps, kit, carrier, condition, replacesId };
+    const command = { do: 'move_parts' as const, kind, parts: [part], occurredAt: data.occurredAt };
+    // A counted hand-over is a fact: it is written whatever else changed on the order meanwhile.
+    await runOrderCommand(ask, { orderId, expectedVersion: null, requestKey, command });
+    revalidatePath(`/orders/${orderId}`, 'layout');
+    return { done: 'Written down.' };
+  },
+  ['kit'],
+);

@@ -1,0 +1,67 @@
+import type { ReactNode } from 'react';
+import { sayEvent } from '@/lib/domain/orders/say-event';
+import type { Side } from '@/lib/domain/orders/facts';
+import type { LengthUnit } from '@/lib/domain/quantity/length';
+import { sayMoment } from '@/lib/forms/say';
+
+interface Entry {
+  readonly seq: number;
+  readonly type: string;
+  readonly payload: Readonly<Record<string, unknown>>;
+  readonly author: string;
+  readonly shopName: string;
+  readonly side: Side;
+  readonly at: Date;
+  readonly body: string | null;
+}
+
+interface ThreadProps {
+  entries: readonly (Entry & { quietNote?: string | undefined })[];
+  side: Side;
+  unit: LengthUnit;
+  timeZone: string;
+  children?: ReactNode;
+}
+
+/** Messages, with the order's events between them. Ours stand on blue, theirs on brass. */
+export function Thread({ entries, side, unit, timeZone, children }: ThreadProps) {
+  return (
+    <section className="sheet" aria-label="Messages" id="messages">
+      <h2 className="px-4 pt-4 pb-3 text-[17px]">Messages</h2>
+      <ol
+        className="max-h-[34rem] overflow-y-auto border-t border-rule-2"
+        tabIndex={0}
+        aria-label="Messages and events"
+      >
+        {entries.map((entry) =>
+          entry.body === null ? (
+            <li
+              key={entry.seq}
+              className="border-b border-rule-2 bg-granite px-4 py-2 text-[13.5px] text-ink-2"
+            >
+              {entry.shopName} {sayEvent(entry.type, entry.payload, unit)}
+            </li>
+          ) : (
+            <li
+              key={entry.seq}
+              className={`border-b border-l-4 border-rule-2 px-4 py-3 ${entry.side === side ? 'border-l-blue' : 'border-l-brass'}`}
+            >
+              <p className="flex justify-between gap-3 text-[13px] text-ink-3">
+                <span>
+                  {entry.shopName}, {entry.author}
+                  {entry.type === 'order.we_spoke' ? ' · we spoke' : ''}
+                </span>
+                <span>{sayMoment(entry.at, timeZone)}</span>
+              </p>
+              <p className="whitespace-pre-wrap">{entry.body}</p>
+              {entry.quietNote !== undefined && (
+                <p className="mt-1 text-[13.5px] text-tocut">▲ {entry.quietNote}</p>
+              )}
+            </li>
+          ),
+        )}
+      </ol>
+      {children !== undefined && <div className="p-4">{children}</div>}
+    </section>
+  );
+}

@@ -1,0 +1,103 @@
+'use client';
+
+import { useEffect, useMemo, useRef, useState } from 'react';
+import { SheetAnswer } from '@/components/worksheet/sheet-answer';
+import { SheetFields } from '@/components/worksheet/sheet-fields';
+import { BlockMap } from '@/components/parts-map/block-map';
+import { CrankMap } from '@/components/parts-map/crank-map';
+import type { Made } from '@/lib/domain/builds/made';
+import { operationByKey } from '@/lib/domain/operations/catalogue';
+import type { Raw } from '@/lib/domain/operations/fill';
+import type { LengthUnit } from '@/lib/domain/quantity/length';
+import { workSheet } from '@/lib/domain/sizes/release';
+
+interface WorksheetProps {
+  id: string;
+  version: number;
+  operation: string;
+  made: Made;
+  unit: LengthUnit;
+  raw: Raw;
+}
+
+type Saved = 'kept' | 'keeping' | 'stale' | 'waiting';
+
+const WORDS: Readonly<Record<Saved, string>> = {
+  kept: 'Kept as you type',
+  keeping: 'Keeping …',
+  waiting: 'Not kept yet: no connection. What you typed is still here.',
+  stale: 'Somebody else wrote on this sheet. Load the page again to see it; what you typed is still here.',
+};
+
+/** The sheet of one operation: it works itself out while one types, in the browser, and keeps what was typed. */
+export function Worksheet({ id, version, operation: key, made, unit, raw: first }: WorksheetProps) {
+  const operation = operationByKey(key);
+  const [raw, setRaw] = useState<Raw>(first);
+  const [saved, setSaved] = useState<Saved>('kept');
+  const known = useRef({ version, raw: first });
+  const { filled, worked } = useMemo(() => workSheet(key, raw, { made, unit }), [key, raw, made, unit]);
+
+  useEffect(() => {
+    if (raw === known.current.raw || saved === 'stale') return;
+    const timer = setTimeout(() => {
+      setSaved('keeping');
+      void keep(id, known.current.version, raw).then((answer) => {
+        if (answer === 'stale' || answer === 'waiting') {
+          setSaved(answer);
+          return;
+        }
+        known.current = { version: answer, raw };
+        setSaved('kept');
+      });
+    }, 500);
+    return () => clearTimeout(timer);
+  }, [id, raw, saved]);
+
+  const set = (path: string, text: string) => setRaw((before) => ({ ...before, [path]: text }));
+  return (
+    <>
+      <p className="note mb-3" aria-live="polite">
+        {WORDS[saved]}
+      </p>
+      <div className="grid items-start gap-6 xl:grid-cols-[minmax(0,1fr)_380px]">
+        <div className="grid gap-5">
+          {operation.part === 'crank' && (
+            <CrankMap
+              made={made}
+              about={key === 'grind_mains' ? 'mains' : key === 'grind_rods' ? 'rods' : 'both'}
+            />
+          )}
+          {operation.part === 'block' && <BlockMap made={made} />}
+          <SheetFields operation={operation} made={made} raw={raw} filled={filled} set={set} />
+          <ul className="note border-t border-rule pt-3">
+            {operation.cautions.map((caution) => (
+              <li key={caution}>{caution}</li>
+            ))}
+          </ul>
+          <details className="sheet px-5 py-3">
+            <summary className="cursor-pointer font-semibold">How it is measured and worked out</summary>
+            <p className="mt-2 max-w-prose">{operation.method}</p>
+          </details>
+        </div>
+        <SheetAnswer worked={worked} filled={filled} unit={unit} />
+      </div>
+    </>
+  );
+}
+
+/** Keeps the sheet; survives leaving the page. Answers the new version, or why it was not kept. */
+async function keep(id: string, version: number, raw: Raw): Promise<number | 'stale' | 'waiting'> {
+  try {
+    const response = await fetch(`/api/v1/worksheets/${id}`, {
+      method: 'PUT',
+      headers: { 'content-type': 'application/json', 'if-match': `"${version}"` },
+      body: JSON.stringify({ raw }),
+      keepalive: true,
+    });
+    if (response.status === 412) return 'stale';
+    if (!response.ok) return 'waiting';
+    return ((await response.json()) as { version: number }).version;
+  } catch {
+    return 'waiting';
+  }
+}

@@ -1,0 +1,86 @@
+import 'server-only';
+import type { Tx } from '@/db/client';
+import { findFacts } from '@/db/repositories/order-facts';
+import type { Actor } from '@/lib/domain/actor';
+import type { CommandKind } from '@/lib/domain/orders/commands';
+import { allowedCommands } from '@/lib/domain/orders/decide';
+import type { Facts, Side } from '@/lib/domain/orders/facts';
+import { type Stand, stand } from '@/lib/domain/orders/stand';
+
+/** What every page of an order needs. */
+export interface OrderView {
+  readonly facts: Facts;
+  readonly side: Side;
+  readonly stand: Stand;
+  readonly allowed: readonly CommandKind[];
+  readonly title: string;
+  readonly engine: string;
+  /** Of the sender only. */
+  readonly buildNumber: number | null;
+  readonly notes: string;
+  readonly standingInstruction: string;
+  readonly transport: 'delivered' | 'fetched';
+  readonly reference: string;
+  readonly agreedMinor: number | null;
+  readonly revAt: Date | null;
+  readonly thread: readonly ThreadEntry[];
+}
+
+/** A message, or an event of the order between messages. */
+export interface ThreadEntry {
+  readonly seq: number;
+  readonly type: string;
+  readonly payload: Readonly<Record<string, unknown>>;
+  readonly author: string;
+  readonly shopName: string;
+  readonly side: Side;
+  readonly at: Date;
+  readonly body: string | null;
+}
+
+interface HeadRow {
+  title: string;
+  engine: string;
+  buildNumber: number | null;
+  notes: string;
+  standingInstruction: string;
+  transport: 'delivered' | 'fetched';
+  reference: string;
+  revAt: Date | null;
+}
+
+/** Loads an order for its page: three statements. Undefined outside the asker's orders. */
+export async function loadOrder(tx: Tx, actor: Actor, orderId: string): Promise<OrderView | undefined> {
+  const facts = await findFacts(tx, orderId);
+  if (!facts) return undefined;
+  const { rows } = await tx.raw<{ rows: HeadRow[] }>(
+    `select o.title, o.notes, o.standing_instruction as "standingInstruction", o.transport,
+       coalesce((select p.engine from order_parts p where p.order_id = o.id and p.engine <> '' limit 1), '') as engine,
+       (select b.number from builds b where b.id = o.build_id) as "buildNumber",
+       coalesce((select r.text from order_references r where r.order_id = o.id and r.shop_id = ?), '') as reference,
+       (select v.released_at from revs v where v.order_id = o.id and v.number = o.latest_rev) as "revAt"
+     from orders o where o.id = ?`,
+    [actor.shopId, orderId],
+  );
+  const head = rows[0];
+  if (!head) return undefined;
+  const side: Side = facts.sender.shopId === actor.shopId ? 'sender' : 'partner';
+  return {
+    ...head,
+    ...{ facts, side, stand: stand(facts), allowed: allowedCommands(facts, { actor, side }) },
+    agreedMinor:
+      facts.quotes.find((quote) => quote.kind === 'work' && quote.state === 'agree')?.totalMinor ?? null,
+    thread: await loadThread(tx, orderId),
+  };
+}
+
+/** The thread and log of an order, oldest first. */
+export async function loadThread(tx: Tx, orderId: string): Promise<ThreadEntry[]> {
+  const { rows } = await tx.raw<{ rows: ThreadEntry[] }>(
+    `select * from (select e.seq, e.type, e.payload, e.author_name as author, s.name as "shopName", e.side, e.occurred_at as at, m.body
+       from events e join shops s on s.id = e.shop_id left join messages m on m.event_id = e.id
+       where e.order_id = ? order by e.seq desc limit 300) latest order by seq`,
+    [orderId],
+  );
+  return rows;
+}

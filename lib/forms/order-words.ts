@@ -1,0 +1,62 @@
+import type { Facts, Side } from '@/lib/domain/orders/facts';
+import { piecesMissing, whereabouts } from '@/lib/domain/orders/pieces';
+import type { Stand } from '@/lib/domain/orders/stand';
+import { printMoney } from '@/lib/domain/quantity/money';
+
+/** What stands under each punch of the tag. */
+export function sayPunches(
+  facts: Facts,
+  agreedMinor: number | null,
+): Record<'price' | 'parts' | 'sizes', string> {
+  const there = facts.parts.reduce((all, part) => all + whereabouts(part, facts.moves).partner, 0);
+  const all = facts.parts.reduce((sum, part) => sum + part.pieces, 0);
+  const wrong = facts.parts
+    .map((part) => piecesMissing(part, whereabouts(part, facts.moves)))
+    .find((words) => words !== null);
+  const rev = facts.latestRev;
+  return {
+    price: agreedMinor === null ? priceWord(facts) : `agreed ${printMoney(agreedMinor)}`,
+    parts: there === all && wrong ? wrong : `${there} of ${all} checked in`,
+    sizes:
+      facts.punches.sizes === 'not_needed'
+        ? 'not needed'
+        : rev === null
+          ? 'no sizes yet'
+          : `rev ${rev}${facts.punches.sizes === 'met' ? ' repeated back' : ''}`,
+  };
+}
+
+function priceWord(facts: Facts): string {
+  const open = facts.quotes.findLast((quote) => quote.state === 'open' || quote.state === 'ask');
+  return open ? `${printMoney(open.totalMinor)} named` : 'not named';
+}
+
+/** The tag's last line: whether it may be cut, and whose move it is. */
+export function sayVerdict(facts: Facts, stand: Stand, side: Side): string {
+  const partner = facts.partner?.name ?? 'nobody yet';
+  if (facts.status === 'draft') return 'Draft. Nobody else sees it.';
+  if (stand.stopped) return stand.clock === 'snag' ? 'A snag waits for its answer.' : 'Stopped.';
+  if (stand.clear && facts.status === 'cutting') return `Clear to cut. On the machine at ${partner}.`;
+  if (stand.clear) return 'Clear to cut.';
+  const own = side === 'sender' ? stand.senderStep : stand.partnerStep;
+  const theirs = side === 'sender' ? stand.partnerStep : stand.senderStep;
+  if (own !== null) return `Your move: ${own.charAt(0).toLowerCase()}${own.slice(1)}.`;
+  if (theirs !== null) return `Their move: ${theirs.charAt(0).toLowerCase()}${theirs.slice(1)}.`;
+  return ENDS[facts.status] ?? 'Nothing waits.';
+}
+
+const ENDS: Readonly<Record<string, string>> = {
+  closed: 'Closed. Everything is home.',
+  declined: 'Declined.',
+  withdrawn: 'Withdrawn.',
+  cancelled: 'Cancelled.',
+};
+
+/** The page on which a step is done. */
+export function tabOf(step: string | null): 'price' | 'parts' | 'sizes' | 'readings' {
+  if (step === null) return 'sizes';
+  if (/price|owed|quote/i.test(step)) return 'price';
+  if (/parts/i.test(step)) return 'parts';
+  if (/machine|cut,|report|decide$|decide about|snag|hold/i.test(step)) return 'readings';
+  return 'sizes';
+}

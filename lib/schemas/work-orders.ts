@@ -1,0 +1,10 @@
+import { z } from 'zod';
+
+const one = (value: unknown) => (Array.isArray(value) ? (value as unknown[])[0] : value);
+
+/** What the address of the list says; anything odd falls back to the first page of open orders. */
+export const workOrderFilterSchema = z.object({
+  show: z.preprocess(one, z.enum(['open', 'drafts', 'ended', 'all']).catch('open')),
+  find: z.preprocess(one, z.string().trim().max(80).catch('')),
+  before: z.preprocess(one, z.coerce.number().int().positive().nullable().catch(null)),
+});
