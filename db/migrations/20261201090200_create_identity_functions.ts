@@ -186,6 +186,11 @@ export async function up(knex: Knex): Promise<void> {
       perform default_hours(shop);
     end $$;
 
+    create function owner_of_shop(shop uuid) returns uuid
+      language sql stable security definer set search_path = public, pg_temp as $$
+      select m.person_id from memberships m join people p on p.id = m.person_id
+      where m.shop_id = shop and m.ended_at is null and 'owner' = any (m.roles) and p.disabled_at is null order by m.created_at, m.id limit 1 $$;
+
     create function next_number(kind text) returns integer
       language plpgsql security definer set search_path = public, pg_temp as $$
     declare n integer;
@@ -204,14 +209,14 @@ export async function up(knex: Knex): Promise<void> {
       switch_shop(text, uuid), note_access(text, uuid, uuid, text, boolean), take_try(text, integer, integer),
       begin_reset(uuid, text, text), take_reset(text, text), read_invitation(text),
       take_invitation(text, uuid, text, text, uuid), sign_up_shop(uuid, text, text, text, text, uuid, text, text, text),
-      invite_shop(uuid, text), next_number(text) to wiretag_app;
+      invite_shop(uuid, text), next_number(text), owner_of_shop(uuid) to wiretag_app;
   `);
 }
 
 /** Drops the doors. */
 export async function down(knex: Knex): Promise<void> {
   await knex.raw(`
-    drop function next_number(text), invite_shop(uuid, text),
+    drop function owner_of_shop(uuid), next_number(text), invite_shop(uuid, text),
       sign_up_shop(uuid, text, text, text, text, uuid, text, text, text), default_hours(uuid),
       take_invitation(text, uuid, text, text, uuid), read_invitation(text), take_reset(text, text),
       begin_reset(uuid, text, text), take_try(text, integer, integer), note_access(text, uuid, uuid, text, boolean),

@@ -107,3 +107,9 @@ async function truth(tx: Tx, call: string, values: readonly (string | number)[])
   const { rows } = await tx.raw<{ rows: { yes: boolean }[] }>(`select ${call} as yes`, [...values]);
   return rows[0]?.yes ?? false;
 }
+
+/** An owner of the shop, the longest there; for background tasks. */
+export async function ownerOfShop(tx: Tx, shopId: string): Promise<string | undefined> {
+  const { rows } = await tx.raw<{ rows: { id: string | null }[] }>('select owner_of_shop(?) as id', [shopId]);
+  return rows[0]?.id ?? undefined;
+}

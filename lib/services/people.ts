@@ -1,0 +1,8 @@
+import 'server-only';
+import { beginUnknown } from '@/db/client';
+import { ownerOfShop } from '@/db/repositories/identity';
+
+/** An owner of a shop, in whose name a background task acts; undefined for a shop that nobody has claimed. */
+export async function findOwnerOf(shopId: string): Promise<string | undefined> {
+  return beginUnknown((tx) => ownerOfShop(tx, shopId));
+}
