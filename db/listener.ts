@@ -28,10 +28,16 @@ export async function listenTo(shopId: string, heard: Listener, ended: Listener)
 }
 
 /** Ends every stream, so that the server can drain. */
-export function endAllStreams(): void {
+function endAllStreams(): void {
   for (const ended of [...hub.enders]) ended();
   void hub.client?.end();
   hub.client = null;
+}
+
+/** Ends the streams when this process is asked to leave. */
+export function endStreamsOnLeave(): void {
+  process.once('SIGTERM', endAllStreams);
+  process.once('SIGINT', endAllStreams);
 }
 
 async function connect(): Promise<void> {

@@ -19,9 +19,7 @@ const ADDRESS = /^[^\s"'(),:;<>@[\\\]]+@[^\s"'(),:;<>@[\\\]]+$/;
 export async function sendMail(mail: Mail): Promise<void> {
   if (!ADDRESS.test(mail.to.address)) throw new Error('Not one plain mail address');
   const { SMTP_URL, MAIL_FROM } = settings();
-  const transport = nodemailer.createTransport(SMTP_URL, {
-    connectionTimeout: 10_000,
-  } as nodemailer.TransportOptions);
+  const transport = nodemailer.createTransport(SMTP_URL);
   await transport.sendMail({
     from: MAIL_FROM,
     to: { name: mail.to.name.replaceAll(/[\r\n]/g, ' '), address: mail.to.address },

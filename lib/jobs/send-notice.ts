@@ -2,6 +2,7 @@ import 'server-only';
 import { begin, beginUnknown } from '@/db/client';
 import { loadOrder } from '@/db/read-models/order-page';
 import { closeNotice, type NoticeRow, takeNotice } from '@/db/repositories/notice-letters';
+import { now } from '@/lib/adapters/clock';
 import { linkAddress, linkSecret } from '@/lib/adapters/links';
 import { sendMail } from '@/lib/adapters/mail';
 import { sayEvent } from '@/lib/domain/orders/say-event';
@@ -29,6 +30,9 @@ export async function sendNotice(noticeId: string): Promise<void> {
   });
   await beginUnknown((tx) => closeNotice(tx, noticeId, 'sent'));
 }
+
+/** After three days a mail tells nobody anything new; the bench does. */
+const TOO_OLD = 3 * 24 * 3600 * 1000;
 
 function invitationLetter({ kind, detail }: NoticeRow): Letter | null {
   if (kind === 'password.reset') {
@@ -77,6 +81,7 @@ async function orderLetter(notice: NoticeRow, orderId: string): Promise<Letter |
     const last = view.thread.findLast(
       (entry) => entry.side !== view.side && (isMessage ? entry.body !== null : entry.type === notice.kind),
     );
+    if (last && now().getTime() - last.at.getTime() > TOO_OLD) return null;
     const said = last
       ? (last.body ?? `${last.shopName} ${sayEvent(last.type, last.payload, actor.unit)}.`)
       : '';
