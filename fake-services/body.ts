@@ -25,18 +25,20 @@ export async function readBody(request: IncomingMessage): Promise<Body> {
   const declared = request.headers['x-amz-content-sha256'];
   const isChunked = typeof declared === 'string' && declared.startsWith('STREAMING-');
   const { bytes, trailers } = isChunked ? unchunk(raw) : { bytes: raw, trailers: {} };
-  if (
-    typeof declared === 'string' &&
-    /^[0-9a-f]{64}$/.test(declared) &&
-    digest('sha256', bytes, 'hex') !== declared
-  ) {
+  checkDigests(request, bytes);
+  return { bytes, checksums: checkSums(bytes, { ...headersOf(request), ...trailers }) };
+}
+
+function checkDigests(request: IncomingMessage, bytes: Buffer): void {
+  const said = headersOf(request);
+  const declared = said['x-amz-content-sha256'] ?? '';
+  if (/^[0-9a-f]{64}$/.test(declared) && digest('sha256', bytes, 'hex') !== declared) {
     throw new BadBody('XAmzContentSHA256Mismatch');
   }
-  const length = request.headers['x-amz-decoded-content-length'];
-  if (typeof length === 'string' && Number(length) !== bytes.length) throw new BadBody('IncompleteBody');
-  const md5 = request.headers['content-md5'];
-  if (typeof md5 === 'string' && digest('md5', bytes, 'base64') !== md5) throw new BadBody('BadDigest');
-  return { bytes, checksums: checkSums(bytes, { ...headersOf(request), ...trailers }) };
+  const length = said['x-amz-decoded-content-length'];
+  if (length !== undefined && Number(length) !== bytes.length) throw new BadBody('IncompleteBody');
+  const md5 = said['content-md5'];
+  if (md5 !== undefined && digest('md5', bytes, 'base64') !== md5) throw new BadBody('BadDigest');
 }
 
 function checkSums(bytes: Buffer, given: Readonly<Record<string, string>>): Record<string, string> {

@@ -38,7 +38,7 @@ export async function startMailbox({
           mails.push({
             ...{ id: mails.length + 1, to, subject: mail.subject ?? '', text: mail.text ?? '' },
             ...{
-              html: mail.html || '',
+              html: typeof mail.html === 'string' ? mail.html : '',
               messageId: mail.messageId ?? '',
               at: new Date().toISOString(),
             },

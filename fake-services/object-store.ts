@@ -1,7 +1,9 @@
 import { randomUUID } from 'node:crypto';
 import { createServer, type IncomingMessage, type ServerResponse } from 'node:http';
 import { BadBody, type Body, digest, readBody } from './body';
+import { listPage } from './object-list';
 import { Shelf } from './shelf';
+import { escape, unescape, xml } from './xml';
 import { signatureProblem, type SigningKeys } from './signature';
 
 /** What a web application uses of S3, on this machine alone. */
@@ -91,37 +93,7 @@ function answerBucket(store: Store, asked: Asked): void {
     response.end();
     return;
   }
-  list(store, asked);
-}
-
-function list({ shelf }: Store, { response, url, bucket }: Asked): void {
-  const get = (name: string) => url.searchParams.get(name) ?? '';
-  const [prefix, delimiter, after] = [get('prefix'), get('delimiter'), get('continuation-token')];
-  const most = Number(url.searchParams.get('max-keys') ?? 1000);
-  const found = shelf.list(bucket).filter(({ key }) => key.startsWith(prefix) && key > after);
-  const isGrouped = (key: string) => delimiter !== '' && key.slice(prefix.length).includes(delimiter);
-  const groups = [
-    ...new Set(
-      found
-        .filter(({ key }) => isGrouped(key))
-        .map(({ key }) => key.slice(0, key.indexOf(delimiter, prefix.length) + 1)),
-    ),
-  ];
-  const own = found.filter(({ key }) => !isGrouped(key));
-  const page = own.slice(0, most);
-  const isCut = own.length > page.length;
-  const contents = page.map(
-    ({ key, etag, bytes, at }) =>
-      `<Contents><Key>${escape(key)}</Key><LastModified>${at}</LastModified><ETag>${etag}</ETag><Size>${bytes}</Size></Contents>`,
-  );
-  const common = groups.map((group) => `<CommonPrefixes><Prefix>${escape(group)}</Prefix></CommonPrefixes>`);
-  const next = isCut
-    ? `<NextContinuationToken>${escape(page.at(-1)?.key ?? '')}</NextContinuationToken>`
-    : '';
-  xml(
-    response,
-    `<ListBucketResult><Name>${bucket}</Name><KeyCount>${page.length}</KeyCount><IsTruncated>${String(isCut)}</IsTruncated>${next}${contents.join('')}${common.join('')}</ListBucketResult>`,
-  );
+  xml(asked.response, listPage(store.shelf, bucket, url));
 }
 
 function answerObject(store: Store, asked: Asked): void {
@@ -271,26 +243,4 @@ function refuse(request: IncomingMessage, response: ServerResponse, error: unkno
       ? undefined
       : `<?xml version="1.0"?><Error><Code>${code}</Code><Message>${code}</Message></Error>`,
   );
-}
-
-function xml(response: ServerResponse, text: string): void {
-  response
-    .writeHead(200, { 'content-type': 'application/xml' })
-    .end(`<?xml version="1.0" encoding="UTF-8"?>${text}`);
-}
-
-function escape(text: string): string {
-  return text
-    .replaceAll('&', '&amp;')
-    .replaceAll('<', '&lt;')
-    .replaceAll('>', '&gt;')
-    .replaceAll('"', '&quot;');
-}
-
-function unescape(text: string): string {
-  return text
-    .replaceAll('&quot;', '"')
-    .replaceAll('&gt;', '>')
-    .replaceAll('&lt;', '<')
-    .replaceAll('&amp;', '&');
 }

@@ -11,9 +11,13 @@ export interface SigningKeys {
 export function signatureProblem(request: IncomingMessage, url: URL, keys: SigningKeys): string | null {
   const signed = url.searchParams.has('X-Amz-Signature') ? fromAddress(url) : fromHeader(request);
   if (!signed) return 'AccessDenied';
-  const [keyId, day = '', region = '', service = ''] = signed.credential.split('/');
-  if (keyId !== keys.accessKeyId) return 'InvalidAccessKeyId';
+  if (!signed.credential.startsWith(`${keys.accessKeyId}/`)) return 'InvalidAccessKeyId';
   if (signed.expiresAt !== null && Date.now() > signed.expiresAt) return 'AccessDenied';
+  return isSame(signatureOf(request, url, signed, keys), signed.signature) ? null : 'SignatureDoesNotMatch';
+}
+
+function signatureOf(request: IncomingMessage, url: URL, signed: Signed, keys: SigningKeys): string {
+  const scope = signed.credential.split('/').slice(1);
   const canonical = [
     request.method ?? '',
     (request.url ?? '').split('?')[0] ?? '',
@@ -23,18 +27,12 @@ export function signatureProblem(request: IncomingMessage, url: URL, keys: Signi
     signed.headers.join(';'),
     signed.payloadHash,
   ].join('\n');
-  const toSign = [
-    'AWS4-HMAC-SHA256',
-    signed.date,
-    `${day}/${region}/${service}/aws4_request`,
-    sha256(canonical),
-  ].join('\n');
-  const signingKey = [day, region, service, 'aws4_request'].reduce<Buffer | string>(
+  const toSign = ['AWS4-HMAC-SHA256', signed.date, scope.join('/'), sha256(canonical)].join('\n');
+  const signingKey = scope.reduce<Buffer | string>(
     (key, part) => hmac(key, part),
     `AWS4${keys.secretAccessKey}`,
   );
-  const expected = hmac(signingKey, toSign).toString('hex');
-  return isSame(expected, signed.signature) ? null : 'SignatureDoesNotMatch';
+  return hmac(signingKey, toSign).toString('hex');
 }
 
 interface Signed {

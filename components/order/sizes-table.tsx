@@ -66,8 +66,8 @@ interface Group extends Omit<SizeRow, 'feature'> {
 }
 
 /** Equal sizes of one name, with the features they stand for: 1 to 6, or 1, 3, 5. */
-export function groupSizes<S extends SizeRow>(sizes: readonly S[]): Group[] {
-  const groups = new Map<string, S[]>();
+export function groupSizes(sizes: readonly SizeRow[]): Group[] {
+  const groups = new Map<string, SizeRow[]>();
   for (const size of sizes) {
     const key = `${size.what}|${size.lower}|${size.upper}|${size.target}`;
     groups.set(key, [...(groups.get(key) ?? []), size]);

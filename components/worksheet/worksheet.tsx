@@ -30,34 +30,53 @@ const WORDS: Readonly<Record<Saved, string>> = {
 };
 
 /** The sheet of one operation: it works itself out while one types, in the browser, and keeps what was typed. */
-export function Worksheet({ id, version, operation: key, made, unit, raw: first }: WorksheetProps) {
+export function Worksheet({
+  id,
+  version: firstVersion,
+  operation: key,
+  made,
+  unit,
+  raw: first,
+}: WorksheetProps) {
   const operation = operationByKey(key);
   const [raw, setRaw] = useState<Raw>(first);
   const [saved, setSaved] = useState<Saved>('kept');
-  const known = useRef({ version, raw: first });
+  const [kept, setKept] = useState<Raw>(first);
+  const version = useRef(firstVersion);
+  // One save after the other: each carries the version that the one before it made.
+  const saves = useRef<Promise<void>>(Promise.resolve());
   const { filled, worked } = useMemo(() => workSheet(key, raw, { made, unit }), [key, raw, made, unit]);
 
+  const isOpen = raw !== kept && saved !== 'stale';
   useEffect(() => {
-    if (raw === known.current.raw || saved === 'stale') return;
+    if (!isOpen) return undefined;
+    const save = async () => {
+      const answer = await keep(id, version.current, raw);
+      if (answer === 'stale' || answer === 'waiting') {
+        setSaved(answer);
+        return;
+      }
+      version.current = answer;
+      setKept(raw);
+      setSaved('kept');
+    };
     const timer = setTimeout(() => {
-      setSaved('keeping');
-      void keep(id, known.current.version, raw).then((answer) => {
-        if (answer === 'stale' || answer === 'waiting') {
-          setSaved(answer);
-          return;
-        }
-        known.current = { version: answer, raw };
-        setSaved('kept');
-      });
+      saves.current = saves.current.then(save);
     }, 500);
-    return () => clearTimeout(timer);
-  }, [id, raw, saved]);
+    // Leaving the page keeps what was typed in the last half second too.
+    const leave = () => void save();
+    window.addEventListener('pagehide', leave);
+    return () => {
+      clearTimeout(timer);
+      window.removeEventListener('pagehide', leave);
+    };
+  }, [id, raw, isOpen]);
 
   const set = (path: string, text: string) => setRaw((before) => ({ ...before, [path]: text }));
   return (
     <>
       <p className="note mb-3" aria-live="polite">
-        {WORDS[saved]}
+        {WORDS[isOpen && saved === 'kept' ? 'keeping' : saved]}
       </p>
       <div className="grid items-start gap-6 xl:grid-cols-[minmax(0,1fr)_380px]">
         <div className="grid gap-5">

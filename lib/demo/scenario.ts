@@ -1,50 +1,11 @@
 import { setClock } from '@/lib/adapters/clock';
+import { openBuild } from '@/lib/demo/builds';
 import { type Cast, demoId } from '@/lib/demo/cast';
-import {
-  handed,
-  keyedBack,
-  measured,
-  moment,
-  openOrder,
-  play,
-  priced,
-  sheet,
-  type StagedOrder,
-} from '@/lib/demo/stage';
+import { handed, keyedBack, measured, moment, openOrder, play, priced, sheet } from '@/lib/demo/stage';
+import { playTheEnded } from '@/lib/demo/ended';
+import { agreedAndThere, finishedBlock, releasedAndKeyed, rodReadings, rodSheet } from '@/lib/demo/steps';
 import { shiftDay } from '@/lib/domain/calendar/calendar';
-import { findPreset } from '@/lib/domain/builds/presets';
-import type { Made } from '@/lib/domain/builds/made';
-import type { Raw } from '@/lib/domain/operations/fill';
-import type { ReleasedLine } from '@/lib/domain/orders/commands';
-import { createBuild } from '@/lib/services/builds';
 import { writeMessage } from '@/lib/services/messages';
-
-interface DemoBuild {
-  readonly id: string;
-  readonly made: Made;
-}
-
-const ROD_BORES = '2.1172 2.1171 2.1173 2.1172 2.1170 2.1172';
-const FOUND = '2.1238 2.1241 2.1236 2.1240 2.1237 2.1239';
-const PLACES = ['front, in line', 'front, across', 'rear, in line', 'rear, across'];
-
-function column(name: string, values: string, prefix = ''): Raw {
-  return Object.fromEntries(
-    values.split(' ').map((value, index) => [`${name}.${prefix}${index + 1}`, value]),
-  );
-}
-
-function rodSheet(bores = ROD_BORES): Raw {
-  return {
-    ...column('bores', bores),
-    ...column('found', FOUND),
-    standardLow: '2.1240',
-    standardHigh: '2.1250',
-    undersize: '.010',
-    least: '.0020',
-    most: '.0030',
-  };
-}
 
 /** Plays the present: builds, and an order in every status, ending around `today`. */
 export async function playThePresent(cast: Cast, today: string): Promise<void> {
@@ -52,9 +13,27 @@ export async function playThePresent(cast: Cast, today: string): Promise<void> {
   setClock(moment(start, 0, 8));
   const works = cast['works-owner'];
   if (!works) throw new Error('The works are missing');
-  const six = await openBuild(works, 'six', 'Marlow 262 six', 'inline6', 'R. Pennant');
-  const eight = await openBuild(works, 'eight', 'Aldous 324 V8', 'v8', 'Quarry Boats');
-  const four = await openBuild(works, 'four', 'Fenner 98 four', 'inline4', 'S. Oake');
+  const six = await openBuild({
+    works,
+    key: 'six',
+    engine: 'Marlow 262 six',
+    preset: 'inline6',
+    customerName: 'R. Pennant',
+  });
+  const eight = await openBuild({
+    works,
+    key: 'eight',
+    engine: 'Aldous 324 V8',
+    preset: 'v8',
+    customerName: 'Quarry Boats',
+  });
+  const four = await openBuild({
+    works,
+    key: 'four',
+    engine: 'Fenner 98 four',
+    preset: 'inline4',
+    customerName: 'S. Oake',
+  });
   const at = (days: number, hour: number, minute = 0) => moment(start, days, hour, minute);
   const needed = shiftDay(today, 10);
 
@@ -78,7 +57,7 @@ export async function playThePresent(cast: Cast, today: string): Promise<void> {
     neededBackOn: needed,
     at: at(12, 9),
   });
-  await play(sent, cast, 'sender', at(12, 10), { do: 'send' });
+  await play(sent, 'sender', at(12, 10), { do: 'send' });
 
   const quoted = await openOrder({
     name: 'quoted',
@@ -90,8 +69,8 @@ export async function playThePresent(cast: Cast, today: string): Promise<void> {
     neededBackOn: needed,
     at: at(10, 9),
   });
-  await play(quoted, cast, 'sender', at(10, 10), { do: 'send' });
-  await play(quoted, cast, 'partner', at(12, 11), priced(quoted, 31_000, 8));
+  await play(quoted, 'sender', at(10, 10), { do: 'send' });
+  await play(quoted, 'partner', at(12, 11), priced(quoted, 31_000, 8));
 
   const waiting = await openOrder({
     name: 'waits for sizes',
@@ -103,8 +82,8 @@ export async function playThePresent(cast: Cast, today: string): Promise<void> {
     neededBackOn: shiftDay(today, 6),
     at: at(7, 9),
   });
-  await agreedAndThere(waiting, cast, at);
-  await play(waiting, cast, 'partner', at(9, 13), { do: 'start', lineId: waiting.lineIds[0] ?? '' });
+  await agreedAndThere(waiting, at);
+  await play(waiting, 'partner', at(9, 13), { do: 'start', lineId: waiting.lineIds[0] ?? '' });
 
   const cutting = await openOrder({
     name: 'being cut',
@@ -116,13 +95,8 @@ export async function playThePresent(cast: Cast, today: string): Promise<void> {
     neededBackOn: shiftDay(today, 4),
     at: at(7, 9),
   });
-  await agreedAndThere(cutting, cast, at);
-  const first = await releasedAndKeyed(
-    cutting,
-    cast,
-    at,
-    rodSheet('2.1172 2.1171 2.1173 2.1172 2.1166 2.1172'),
-  );
+  await agreedAndThere(cutting, at);
+  const first = await releasedAndKeyed(cutting, at, rodSheet('2.1172 2.1171 2.1173 2.1172 2.1166 2.1172'));
   await writeMessage(cutting.partner, cutting.orderId, {
     id: demoId('message 1'),
     kind: 'message',
@@ -133,9 +107,9 @@ export async function playThePresent(cast: Cast, today: string): Promise<void> {
     kind: 'message',
     body: 'Go ahead at .010. If it is not clean, stop and tell us here.',
   });
-  await play(cutting, cast, 'partner', at(10, 10), { do: 'start', lineId: cutting.lineIds[0] ?? '' });
+  await play(cutting, 'partner', at(10, 10), { do: 'start', lineId: cutting.lineIds[0] ?? '' });
   const second = [sheet(cutting, 0, 'grind_rods', rodSheet())];
-  await play(cutting, cast, 'sender', at(10, 11), {
+  await play(cutting, 'sender', at(10, 11), {
     do: 'release',
     lines: second,
     reason: 'The cap bolts on rod 5 were pulled dry.',
@@ -143,8 +117,8 @@ export async function playThePresent(cast: Cast, today: string): Promise<void> {
   const nothingCut = first.flatMap((line) =>
     line.sizes.map(({ feature }) => ({ lineId: line.lineId, feature, size: null, text: '' })),
   );
-  await play(cutting, cast, 'partner', at(10, 12), { do: 'answer_stop', cut: nothingCut });
-  await play(cutting, cast, 'partner', at(10, 13), keyedBack(cutting, 2, second));
+  await play(cutting, 'partner', at(10, 12), { do: 'answer_stop', cut: nothingCut });
+  await play(cutting, 'partner', at(10, 13), keyedBack(cutting, 2, second));
   await measured(
     cutting,
     'partner',
@@ -168,10 +142,10 @@ export async function playThePresent(cast: Cast, today: string): Promise<void> {
     neededBackOn: shiftDay(today, 7),
     at: at(7, 9),
   });
-  await agreedAndThere(snag, cast, at);
-  await releasedAndKeyed(snag, cast, at, rodSheet());
-  await play(snag, cast, 'partner', at(11, 9), { do: 'start', lineId: snag.lineIds[0] ?? '' });
-  await play(snag, cast, 'partner', at(12, 14), {
+  await agreedAndThere(snag, at);
+  await releasedAndKeyed(snag, at, rodSheet());
+  await play(snag, 'partner', at(11, 9), { do: 'start', lineId: snag.lineIds[0] ?? '' });
+  await play(snag, 'partner', at(12, 14), {
     do: 'raise_snag',
     id: demoId('snag'),
     lineId: null,
@@ -191,8 +165,8 @@ export async function playThePresent(cast: Cast, today: string): Promise<void> {
     operations: ['hone'],
     at: at(3, 9),
   });
-  await finishedBlock(reported, cast, at, 11);
-  await play(reported, cast, 'partner', at(12, 15), handed(reported, 'sent_back', at(12, 15)));
+  await finishedBlock(reported, at, 11);
+  await play(reported, 'partner', at(12, 15), handed(reported, 'sent_back', at(12, 15)));
 
   const rework = await openOrder({
     name: 'second round',
@@ -203,19 +177,19 @@ export async function playThePresent(cast: Cast, today: string): Promise<void> {
     operations: ['grind_rods'],
     at: at(2, 9),
   });
-  await agreedAndThere(rework, cast, at);
-  await releasedAndKeyed(rework, cast, at, rodSheet());
-  await play(rework, cast, 'partner', at(10, 9), { do: 'start', lineId: rework.lineIds[0] ?? '' });
+  await agreedAndThere(rework, at);
+  await releasedAndKeyed(rework, at, rodSheet());
+  await play(rework, 'partner', at(10, 9), { do: 'start', lineId: rework.lineIds[0] ?? '' });
   await measured(
     rework,
     'partner',
     at(10, 15),
     rodReadings(['2.1149', '2.1148', '2.1150', '2.1152', '2.1149', '2.1148']),
   );
-  await play(rework, cast, 'partner', at(10, 16), { do: 'report', unread: [] });
-  await play(rework, cast, 'partner', at(11, 8), handed(rework, 'sent_back', at(11, 8)));
-  await play(rework, cast, 'sender', at(11, 12), handed(rework, 'received', at(11, 12)));
-  await play(rework, cast, 'sender', at(11, 14), {
+  await play(rework, 'partner', at(10, 16), { do: 'report', unread: [] });
+  await play(rework, 'partner', at(11, 8), handed(rework, 'sent_back', at(11, 8)));
+  await play(rework, 'sender', at(11, 12), handed(rework, 'received', at(11, 12)));
+  await play(rework, 'sender', at(11, 14), {
     do: 'decide',
     decisions: [
       {
@@ -236,8 +210,8 @@ export async function playThePresent(cast: Cast, today: string): Promise<void> {
     operations: ['something_else'],
     at: at(8, 9),
   });
-  await play(held, cast, 'sender', at(8, 10), { do: 'send' });
-  await play(held, cast, 'partner', at(9, 10), {
+  await play(held, 'sender', at(8, 10), { do: 'send' });
+  await play(held, 'partner', at(9, 10), {
     do: 'hold',
     id: demoId('hold'),
     lineId: null,
@@ -246,124 +220,6 @@ export async function playThePresent(cast: Cast, today: string): Promise<void> {
     waitsFor: 'sender',
   });
 
-  const declined = await openOrder({
-    name: 'declined',
-    cast,
-    to: 'rods',
-    build: four,
-    kind: 'rods',
-    operations: ['crack_test'],
-    at: at(4, 9),
-  });
-  await play(declined, cast, 'sender', at(4, 10), { do: 'send' });
-  await play(declined, cast, 'partner', at(5, 10), {
-    do: 'decline',
-    reason: 'No magnetic bench until January.',
-  });
-
-  const withdrawn = await openOrder({
-    name: 'withdrawn',
-    cast,
-    to: 'rods',
-    build: four,
-    kind: 'other part',
-    operations: ['hot_wash'],
-    at: at(4, 9),
-  });
-  await play(withdrawn, cast, 'sender', at(4, 10), { do: 'send' });
-  await play(withdrawn, cast, 'sender', at(4, 15), { do: 'withdraw', reason: 'Washed here after all.' });
-
-  const cancelled = await openOrder({
-    name: 'cancelled',
-    cast,
-    to: 'grinding',
-    build: six,
-    kind: 'crankshaft',
-    operations: ['grind_rods'],
-    at: at(3, 9),
-  });
-  await agreedAndThere(cancelled, cast, at);
-  await play(cancelled, cast, 'sender', at(10, 9), { do: 'cancel', reason: 'The customer sold the engine.' });
-  await play(cancelled, cast, 'partner', at(10, 14), {
-    do: 'settle',
-    totalMinor: 9000,
-    note: 'Wash and crack test',
-  });
+  await playTheEnded(cast, { six, four }, at);
   setClock();
-}
-
-function openBuild(
-  works: { personId: string; shopId: string },
-  key: string,
-  engine: string,
-  preset: string,
-  customerName: string,
-): Promise<DemoBuild> {
-  const made = findPreset(preset);
-  if (!made) throw new Error(`No preset ${preset}`);
-  const input = { engine, preset: made, customerName, notes: '', neededOn: null };
-  return createBuild(works, demoId(`build key ${key}`), input, demoId(`build ${key}`)).then(({ id }) => ({
-    id,
-    made,
-  }));
-}
-
-type At = (days: number, hour: number, minute?: number) => Date;
-
-async function agreedAndThere(order: StagedOrder, cast: Cast, at: At): Promise<void> {
-  await play(order, cast, 'sender', at(7, 10), { do: 'send' });
-  await play(order, cast, 'partner', at(8, 9), priced(order, 24_000));
-  await play(order, cast, 'sender', at(8, 11), { do: 'agree', revision: 1 });
-  await play(order, cast, 'sender', at(8, 15), handed(order, 'sent', at(8, 15)));
-  await play(order, cast, 'partner', at(9, 9), handed(order, 'checked_in', at(9, 9)));
-}
-
-async function releasedAndKeyed(order: StagedOrder, cast: Cast, at: At, raw: Raw): Promise<ReleasedLine[]> {
-  const lines = [sheet(order, 0, 'grind_rods', raw)];
-  await play(order, cast, 'sender', at(9, 14), { do: 'release', lines, reason: '' });
-  await play(order, cast, 'partner', at(10, 8), keyedBack(order, 1, lines));
-  return lines;
-}
-
-/** Four places of each journal; the first is the largest. */
-function rodReadings(sizes: readonly string[]) {
-  return sizes.flatMap((size, index) =>
-    PLACES.map((position, place) => ({
-      line: 0,
-      feature: String(index + 1),
-      position,
-      text: place === 0 ? size : lessTenth(size),
-    })),
-  );
-}
-
-function lessTenth(size: string): string {
-  return (Number(size.replace('.', '')) - 1).toString().replace(/(\d{4})$/, '.$1');
-}
-
-async function finishedBlock(order: StagedOrder, cast: Cast, at: At, day: number): Promise<void> {
-  const raw = {
-    ...column('pistons', '3.9778 3.9780 3.9779 3.9778 3.9780 3.9779 3.9778 3.9780'),
-    least: '.0020',
-    most: '.0030',
-  };
-  await play(order, cast, 'sender', at(3, 10), { do: 'send' });
-  await play(order, cast, 'partner', at(4, 9), priced(order, 42_000, 7));
-  await play(order, cast, 'sender', at(4, 11), { do: 'agree', revision: 1 });
-  await play(order, cast, 'sender', at(5, 8), handed(order, 'sent', at(5, 8)));
-  await play(
-    order,
-    cast,
-    'partner',
-    at(5, 14),
-    handed(order, 'checked_in', at(5, 14), ['pistons', 'torque plate gasket']),
-  );
-  const lines = [sheet(order, 0, 'hone', raw)];
-  await play(order, cast, 'sender', at(6, 10), { do: 'release', lines, reason: '' });
-  await play(order, cast, 'partner', at(6, 13), keyedBack(order, 1, lines));
-  await play(order, cast, 'partner', at(day, 9), { do: 'start', lineId: order.lineIds[0] ?? '' });
-  await play(order, cast, 'partner', at(day, 15), {
-    do: 'report',
-    unread: [{ lineId: order.lineIds[0] ?? '', reason: 'Readings follow with the block, on its card.' }],
-  });
 }

@@ -22,6 +22,7 @@ export interface StagedOrder {
   readonly sender: Player;
   readonly partner: Player;
   readonly made: Made;
+  readonly cast: Cast;
 }
 
 interface NewOrder {
@@ -79,18 +80,18 @@ export async function openOrder(order: NewOrder): Promise<StagedOrder> {
     orderId: demoId(`order ${name}`),
     lineIds,
   });
-  return { name, orderId: id, partId: part.id, stamp, lineIds, sender, partner, made: build.made };
+  return { name, orderId: id, partId: part.id, stamp, lineIds, sender, partner, cast, made: build.made };
 }
 
 /** Does one command of the scenario at its moment; counter people price, bench people cut. */
 export async function play(
   order: StagedOrder,
-  cast: Cast,
   side: 'sender' | 'partner',
   at: Date,
   command: Command,
 ): Promise<void> {
   setClock(at);
+  const { cast } = order;
   const shop =
     Object.entries(cast)
       .find(([, one]) => one.personId === order[side].personId)?.[0]

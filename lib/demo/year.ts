@@ -43,11 +43,11 @@ export async function playAYear(cast: Cast, today: string, orders: number): Prom
     const begun = there + 1 + wait(4, 2);
     const done = begun + kind.base + wait(5, 3);
     const home = done + 1 + wait(3, 4);
-    await play(order, cast, 'sender', at(0, 9), { do: 'send' });
-    await play(order, cast, 'partner', at(0, 14), priced(order, 12_000, kind.base + 3));
-    await play(order, cast, 'sender', at(1, 9), { do: 'agree', revision: 1 });
-    await play(order, cast, 'sender', at(there, 8), handed(order, 'sent', at(there, 8)));
-    await play(order, cast, 'partner', at(there, 13), handed(order, 'checked_in', at(there, 13)));
+    await play(order, 'sender', at(0, 9), { do: 'send' });
+    await play(order, 'partner', at(0, 14), priced(order, 12_000, kind.base + 3));
+    await play(order, 'sender', at(1, 9), { do: 'agree', revision: 1 });
+    await play(order, 'sender', at(there, 8), handed(order, 'sent', at(there, 8)));
+    await play(order, 'partner', at(there, 13), handed(order, 'checked_in', at(there, 13)));
     if (kind.operation === 'something_else') {
       const raw = {
         what: 'Seal face',
@@ -57,19 +57,19 @@ export async function playAYear(cast: Cast, today: string, orders: number): Prom
         where: 'maker’s sheet',
       };
       const lines = [sheet(order, 0, kind.operation, raw)];
-      await play(order, cast, 'sender', at(begun, 9), { do: 'release', lines, reason: '' });
-      await play(order, cast, 'partner', at(begun, 11), keyedBack(order, 1, lines));
+      await play(order, 'sender', at(begun, 9), { do: 'release', lines, reason: '' });
+      await play(order, 'partner', at(begun, 11), keyedBack(order, 1, lines));
     }
     const lineId = order.lineIds[0] ?? '';
-    await play(order, cast, 'partner', at(begun, 14), { do: 'start', lineId });
-    await play(order, cast, 'partner', at(done, 10), {
+    await play(order, 'partner', at(begun, 14), { do: 'start', lineId });
+    await play(order, 'partner', at(done, 10), {
       do: 'report',
       unread: [{ lineId, reason: 'on the card' }],
     });
-    await play(order, cast, 'partner', at(home, 8), handed(order, 'sent_back', at(home, 8)));
-    await play(order, cast, 'sender', at(home, 14), handed(order, 'received', at(home, 14)));
+    await play(order, 'partner', at(home, 8), handed(order, 'sent_back', at(home, 8)));
+    await play(order, 'sender', at(home, 14), handed(order, 'received', at(home, 14)));
     const decisions = [{ lineId, decision: 'accept' as const, reason: '', features: [] }];
-    await play(order, cast, 'sender', at(home, 15), { do: 'decide', decisions });
+    await play(order, 'sender', at(home, 15), { do: 'decide', decisions });
   }
   setClock();
 }

@@ -33,16 +33,25 @@ function priceWord(facts: Facts): string {
 
 /** The tag's last line: whether it may be cut, and whose move it is. */
 export function sayVerdict(facts: Facts, stand: Stand, side: Side): string {
-  const partner = facts.partner?.name ?? 'nobody yet';
   if (facts.status === 'draft') return 'Draft. Nobody else sees it.';
   if (stand.stopped) return stand.clock === 'snag' ? 'A snag waits for its answer.' : 'Stopped.';
-  if (stand.clear && facts.status === 'cutting') return `Clear to cut. On the machine at ${partner}.`;
-  if (stand.clear) return 'Clear to cut.';
-  const own = side === 'sender' ? stand.senderStep : stand.partnerStep;
-  const theirs = side === 'sender' ? stand.partnerStep : stand.senderStep;
-  if (own !== null) return `Your move: ${own.charAt(0).toLowerCase()}${own.slice(1)}.`;
-  if (theirs !== null) return `Their move: ${theirs.charAt(0).toLowerCase()}${theirs.slice(1)}.`;
-  return ENDS[facts.status] ?? 'Nothing waits.';
+  if (stand.clear) {
+    return facts.status === 'cutting'
+      ? `Clear to cut. On the machine at ${facts.partner?.name ?? 'the shop'}.`
+      : 'Clear to cut.';
+  }
+  return sayMove(stand, side) ?? ENDS[facts.status] ?? 'Nothing waits.';
+}
+
+function sayMove(stand: Stand, side: Side): string | null {
+  const [own, theirs] =
+    side === 'sender' ? [stand.senderStep, stand.partnerStep] : [stand.partnerStep, stand.senderStep];
+  if (own !== null) return `Your move: ${lowered(own)}.`;
+  return theirs === null ? null : `Their move: ${lowered(theirs)}.`;
+}
+
+function lowered(words: string): string {
+  return `${words.charAt(0).toLowerCase()}${words.slice(1)}`;
 }
 
 const ENDS: Readonly<Record<string, string>> = {

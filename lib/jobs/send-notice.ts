@@ -1,10 +1,11 @@
 import 'server-only';
 import { begin, beginUnknown } from '@/db/client';
-import { loadOrder } from '@/db/read-models/order-page';
+import { loadOrder, type OrderView, type ThreadEntry } from '@/db/read-models/order-page';
 import { closeNotice, type NoticeRow, takeNotice } from '@/db/repositories/notice-letters';
 import { now } from '@/lib/adapters/clock';
 import { linkAddress, linkSecret } from '@/lib/adapters/links';
 import { sendMail } from '@/lib/adapters/mail';
+import type { ShopUnit } from '@/lib/domain/actor';
 import { sayEvent } from '@/lib/domain/orders/say-event';
 import { type Letter, letterHtml, letterText } from '@/lib/jobs/letters';
 
@@ -34,7 +35,8 @@ export async function sendNotice(noticeId: string): Promise<void> {
 /** After three days a mail tells nobody anything new; the bench does. */
 const TOO_OLD = 3 * 24 * 3600 * 1000;
 
-function invitationLetter({ kind, detail }: NoticeRow): Letter | null {
+function invitationLetter({ kind, detail }: NoticeRow): Letter {
+  const { invitingShop = '', shop = '', invitationId = '', resetId = '' } = detail;
   if (kind === 'password.reset') {
     return {
       subject: 'Set a new password',
@@ -46,26 +48,24 @@ function invitationLetter({ kind, detail }: NoticeRow): Letter | null {
       ],
       press: {
         label: 'Set a new password',
-        address: linkAddress(`/new-password/${linkSecret('reset', detail['resetId'] ?? '')}`),
+        address: linkAddress(`/new-password/${linkSecret('reset', resetId)}`),
       },
     };
   }
   const isPartner = kind === 'invitation.partner';
   return {
-    subject: `${detail['invitingShop'] ?? ''} invites you to Wiretag`,
+    subject: `${invitingShop} invites you to Wiretag`,
     number: null,
-    headline: isPartner
-      ? `${detail['invitingShop'] ?? ''} sends you work orders here`
-      : `Join ${detail['shop'] ?? ''}`,
+    headline: isPartner ? `${invitingShop} sends you work orders here` : `Join ${shop}`,
     lines: [
       isPartner
-        ? `${detail['shop'] ?? ''} is set up for you: orders with their sizes, prices, readings and messages in one place.`
-        : `You are invited into ${detail['shop'] ?? ''}.`,
+        ? `${shop} is set up for you: orders with their sizes, prices, readings and messages in one place.`
+        : `You are invited into ${shop}.`,
       'The link opens once, within two weeks.',
     ],
     press: {
       label: 'Come in',
-      address: linkAddress(`/invitation/${linkSecret('invitation', detail['invitationId'] ?? '')}`),
+      address: linkAddress(`/invitation/${linkSecret('invitation', invitationId)}`),
     },
   };
 }
@@ -74,23 +74,37 @@ async function orderLetter(notice: NoticeRow, orderId: string): Promise<Letter |
   if (notice.personId === null) return null;
   return begin({ personId: notice.personId, shopId: notice.shopId }, async (tx, actor) => {
     const view = await loadOrder(tx, actor, orderId);
-    if (!view) return null;
-    const step = view.side === 'sender' ? view.stand.senderStep : view.stand.partnerStep;
-    if (notice.step !== null && notice.step !== step) return null;
-    const isMessage = notice.kind === 'order.message';
-    const last = view.thread.findLast(
-      (entry) => entry.side !== view.side && (isMessage ? entry.body !== null : entry.type === notice.kind),
-    );
-    if (last && now().getTime() - last.at.getTime() > TOO_OLD) return null;
-    const said = last
-      ? (last.body ?? `${last.shopName} ${sayEvent(last.type, last.payload, actor.unit)}.`)
-      : '';
-    return {
-      subject: `WO ${view.facts.number}: ${notice.step ?? (isMessage ? `message from ${last?.shopName ?? ''}` : view.title)}`,
-      number: view.facts.number,
-      headline: notice.step === null ? view.title : `Your move: ${notice.step}`,
-      lines: [said, view.title].filter((line) => line !== ''),
-      press: { label: 'Open the order', address: linkAddress(`/orders/${orderId}`) },
-    };
+    return view ? writeOrderLetter(notice, view, actor.unit) : null;
   });
+}
+
+function writeOrderLetter(notice: NoticeRow, view: OrderView, unit: ShopUnit): Letter | null {
+  const step = view.side === 'sender' ? view.stand.senderStep : view.stand.partnerStep;
+  if (notice.step !== null && notice.step !== step) return null;
+  const last = lastOf(notice, view);
+  if (isTooOld(last)) return null;
+  const said = last ? sayEntry(last, unit) : view.title;
+  return {
+    subject: `WO ${view.facts.number}: ${notice.step ?? (notice.kind === 'order.message' ? 'message' : view.title)}`,
+    number: view.facts.number,
+    headline: notice.step === null ? view.title : `Your move: ${notice.step}`,
+    lines: said === view.title ? [said] : [said, view.title],
+    press: { label: 'Open the order', address: linkAddress(`/orders/${view.facts.id}`) },
+  };
+}
+
+/** The entry that the notice tells of. */
+function lastOf({ kind }: NoticeRow, { thread, side }: OrderView): ThreadEntry | undefined {
+  const isMessage = kind === 'order.message';
+  return thread.findLast(
+    (entry) => entry.side !== side && (isMessage ? entry.body !== null : entry.type === kind),
+  );
+}
+
+function isTooOld(entry: ThreadEntry | undefined): boolean {
+  return entry !== undefined && now().getTime() - entry.at.getTime() > TOO_OLD;
+}
+
+function sayEntry(entry: ThreadEntry, unit: ShopUnit): string {
+  return entry.body ?? `${entry.shopName} ${sayEvent(entry.type, entry.payload, unit)}.`;
 }

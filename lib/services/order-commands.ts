@@ -30,8 +30,17 @@ export interface OrderCommandAnswer {
   readonly orderId: string;
   readonly version: number;
   readonly status: Facts['status'];
-  /** For repeating back: whether all was equal. */
+  /** For repeating back: whether all was equal, and what was keyed beside what was asked. */
   readonly matches?: boolean;
+  readonly said?: readonly RepeatedSize[];
+}
+
+/** One size as it was keyed, beside the limits that were released. */
+export interface RepeatedSize {
+  readonly what: string;
+  readonly keyed: readonly [lower: string, upper: string];
+  readonly asked: readonly [lower: number, upper: number];
+  readonly matches: boolean;
 }
 
 /**
@@ -91,12 +100,12 @@ async function carryOut(tx: Tx, actor: Actor, facts: Facts, command: Command): P
   });
   if (!decided.ok) throw new AppError(REFUSAL_CODES[decided.problem.code], decided.problem.words);
   await write(tx, { actor, side, facts, command, now: moment.toISOString() }, decided.value);
-  const { matches } = decided.value.events[0]?.payload ?? {};
+  const { matches, said } = decided.value.events[0]?.payload ?? {};
   return {
     orderId: facts.id,
     version: facts.version + 1,
     status: decided.value.facts.status,
-    ...(typeof matches === 'boolean' ? { matches } : {}),
+    ...(typeof matches === 'boolean' ? { matches, said: said as readonly RepeatedSize[] } : {}),
   };
 }
 

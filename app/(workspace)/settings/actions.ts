@@ -21,7 +21,7 @@ const shopSchema = z
     opens: timeSchema,
     closes: timeSchema,
   })
-  .refine(({ opens, closes }) => opens < closes, { path: ['closes'], message: 'It closes before it opens.' });
+  .refine(({ opens, closes }) => opens < closes, { path: ['closes'], error: 'It closes before it opens.' });
 
 /** Keeps the shop's settings. */
 export const changeShopAction = action(shopSchema, async ({ data: { version, ...shop }, ask }) => {

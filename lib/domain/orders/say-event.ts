@@ -18,9 +18,11 @@ const SAYINGS: Readonly<Record<string, Say>> = {
     `named ${kind === 'inspection' ? 'an inspection fee' : 'a price'}: ${money(totalMinor)}${promised(promisedOn, promiseDays)}`,
   'order.agree': ({ totalMinor }) => `agreed the price: ${money(totalMinor)}`,
   'order.release': ({ rev, reason, sizes, stop }, size) =>
-    `released sizes rev ${text(rev)}: ${list(sizes)
-      .map((one) => `${text(one['what'])} ${size(one['lower'])} to ${size(one['upper'])}`)
-      .join(', ')}${because(reason)}${stop === true ? ' STOP: the line being cut waits for an answer.' : ''}`,
+    `released sizes rev ${text(rev)}${because(
+      list(sizes)
+        .map((one) => `${text(one['what'])} ${size(one['lower'])} to ${size(one['upper'])}`)
+        .join(', '),
+    )}${because(reason)}${stop === true ? ' STOP: the line being cut waits for an answer.' : ''}`,
   'order.repeat_back': ({ rev, matches, said }) =>
     matches === true
       ? `repeated the sizes back: the same as rev ${text(rev)}`

@@ -19,17 +19,20 @@ interface OrderFrameProps {
   actor: Actor;
   tab: (typeof TABS)[number];
   children: ReactNode;
+  /** While somebody repeats the sizes back, nothing on the page may show them. */
+  hidesSizes?: boolean;
 }
 
 /** An order's page around one of its tabs: the tag, what is to be done now, the tabs, the messages. */
-export function OrderFrame({ view, actor, tab, children }: OrderFrameProps) {
+export function OrderFrame({ view, actor, tab, children, hidesSizes = false }: OrderFrameProps) {
   const { facts, side, stand } = view;
   const step = side === 'sender' ? stand.senderStep : stand.partnerStep;
   const other = side === 'sender' ? facts.partner : facts.sender;
   const thread = view.thread.map((entry) => ({
     ...entry,
+    payload: hidesSizes ? withoutSizes(entry.payload) : entry.payload,
     quietNote:
-      entry.body === null
+      entry.body === null || hidesSizes
         ? undefined
         : quietNote(entry.body, facts.sizes, facts.latestRev, facts.sender.unit),
   }));
@@ -109,4 +112,8 @@ function tagFacts({ facts, engine, buildNumber, reference }: OrderView): { label
     ['Our reference', reference || null],
   ];
   return rows.flatMap(([label, value]) => (value === null ? [] : [{ label, value }]));
+}
+
+function withoutSizes(payload: Readonly<Record<string, unknown>>): Readonly<Record<string, unknown>> {
+  return Object.fromEntries(Object.entries(payload).filter(([name]) => name !== 'sizes' && name !== 'said'));
 }

@@ -45,7 +45,7 @@ function streamOf({ ticket, shopId, last: first, signal }: StreamOptions): Reada
   const encoder = new TextEncoder();
   let last = first;
   let busy = Promise.resolve();
-  let leave = () => undefined as void;
+  let leave: () => void = () => undefined;
   return new ReadableStream({
     async start(controller) {
       const say = (text: string) => controller.enqueue(encoder.encode(text));

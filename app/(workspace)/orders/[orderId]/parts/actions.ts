@@ -26,7 +26,7 @@ const moveSchema = orderFormSchema.extend({
   replacesId: z
     .string()
     .optional()
-    .transform((id) => id || null),
+    .transform((id) => (id === undefined || id === '' ? null : id)),
 });
 
 /** Hands a part over, checks it in, sends it back or receives it; or puts an earlier entry right. */

@@ -4,7 +4,9 @@ import { revalidatePath } from 'next/cache';
 import { z } from 'zod';
 import { newId } from '@/lib/adapters/ids';
 import type { KeyedSize } from '@/lib/domain/orders/commands';
+import { nanometres } from '@/lib/domain/quantity/length';
 import { LENGTH_PROBLEM_WORDS, parseLength } from '@/lib/domain/quantity/parse-length';
+import { printNear } from '@/lib/domain/quantity/print-length';
 import { action } from '@/lib/http/action';
 import { orderFormSchema } from '@/lib/schemas/order-forms';
 import { runOrderCommand } from '@/lib/services/order-commands';
@@ -20,7 +22,7 @@ const keyedSchema = z
   })
   .transform((form, context) => {
     const read = (name: string) => {
-      const text = String(form[name] ?? '').trim();
+      const text = wordOf(form[name]).trim();
       const parsed = parseLength(text, form.unit);
       if (!parsed.ok)
         context.addIssue({ code: 'custom', path: [name], message: LENGTH_PROBLEM_WORDS[parsed.problem] });
@@ -30,8 +32,8 @@ const keyedSchema = z
       const [lower, upper] = [read(`lower:${index}`), read(`upper:${index}`)];
       if (lower.value === null || upper.value === null) return null;
       const place = {
-        lineId: String(form[`line:${index}`] ?? ''),
-        what: String(form[`what:${index}`] ?? ''),
+        lineId: wordOf(form[`line:${index}`]),
+        what: wordOf(form[`what:${index}`]),
       };
       return {
         ...place,
@@ -53,10 +55,12 @@ export const repeatBackAction = action(keyedSchema, async ({ data, ask }) => {
   const answer = await runOrderCommand(ask, { orderId, expectedVersion: version, requestKey, command });
   revalidatePath(`/orders/${orderId}`, 'layout');
   if (answer.matches === false) {
-    return {
-      message:
-        'This differs from the sizes that were released. Both stand side by side below, and the sender is told. Do not cut.',
-    };
+    const differing = (answer.said ?? []).filter((size) => !size.matches);
+    const sides = differing.map(({ what, keyed, asked }) => {
+      const [lower, upper] = asked.map((nm) => printNear(nanometres(nm), data.unit));
+      return `${what}: you keyed ${keyed.join(' to ')}, rev ${rev} says ${lower ?? ''} to ${upper ?? ''}.`;
+    });
+    return { message: `Not the same. Do not cut. ${sides.join(' ')} The other shop is told.` };
   }
   return { done: 'The same. The sizes are punched.' };
 });
@@ -79,10 +83,10 @@ const stopSchema = z
   })
   .transform((form, context) => {
     const cut = Array.from({ length: form.count }, (_feature, index) => {
-      const text = String(form[`size:${index}`] ?? '').trim();
+      const text = wordOf(form[`size:${index}`]).trim();
       const place = {
-        lineId: String(form[`line:${index}`] ?? ''),
-        feature: String(form[`feature:${index}`] ?? ''),
+        lineId: wordOf(form[`line:${index}`]),
+        feature: wordOf(form[`feature:${index}`]),
         text,
       };
       if (text === '') return { ...place, size: null };
@@ -110,3 +114,7 @@ export const answerStopAction = action(stopSchema, async ({ data, ask }) => {
   revalidatePath(`/orders/${orderId}`, 'layout');
   return { done: 'Said. Now repeat the new sizes back.' };
 });
+
+function wordOf(value: unknown): string {
+  return typeof value === 'string' ? value : '';
+}

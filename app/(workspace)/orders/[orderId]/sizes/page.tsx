@@ -33,7 +33,7 @@ export default async function SizesPage(props: OrderPageProps) {
   const isOpenForKeying = mayRepeat && !facts.lines.some((line) => line.stopDue);
   const refused = sizes.said.filter((said) => !said.matches);
   return (
-    <OrderFrame view={view} actor={actor} tab="sizes">
+    <OrderFrame view={view} actor={actor} tab="sizes" hidesSizes={isOpenForKeying}>
       {allowed.includes('answer_stop') && facts.lines.some((line) => line.stopDue) && (
         <StopForm view={view} unit={actor.unit} />
       )}
