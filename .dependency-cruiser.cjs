@@ -52,7 +52,7 @@ module.exports = {
     only(
       'app',
       '^app/',
-      '^app/|^components/|^lib/(domain|schemas|forms|services|auth|http|config|adapters)/|^lib/errors\\.ts$|^db/(read-models/|client\\.ts)',
+      '^app/|^components/|^lib/(domain|schemas|forms|services|auth|http|config|adapters)/|^lib/errors\\.ts$|^db/(read-models/|(client|listener)\\.ts)',
     ),
     {
       name: 'services-know-no-web',
