@@ -177,7 +177,7 @@ export async function up(knex: Knex): Promise<void> {
       shared boolean not null default false,
       version integer not null default 1,
       saved_at timestamptz not null default now(),
-      constraint worksheets_line unique (line_id),
+      constraint worksheets_line unique (line_id, order_id),
       constraint worksheets_order_line foreign key (line_id, order_id) references order_lines (id, order_id)
     );
     comment on column worksheets.shared is 'The sender asked the partner to fill it in.';
