@@ -58,6 +58,7 @@ const config = tseslint.config(
   {
     files: ['tests/**'],
     rules: {
+      'max-params': 'off',
       'max-lines': ['error', { max: 400, skipBlankLines: true, skipComments: true }],
     },
   },
