@@ -210,6 +210,11 @@ export async function up(knex: Knex): Promise<void> {
     create function tell_address(notice uuid, telling_shop uuid, address text, what text, more jsonb) returns void
       language sql security definer set search_path = public, pg_temp as $$
       insert into notices (id, shop_id, email_norm, kind, detail) values (notice, telling_shop, address, what, more) $$;
+    create function tell_reset(notice uuid, address text, more jsonb) returns void
+      language sql security definer set search_path = public, pg_temp as $$
+      insert into notices (id, shop_id, email_norm, kind, detail)
+      select notice, m.shop_id, address, 'password.reset', more from people p join memberships m on m.person_id = p.id and m.ended_at is null
+      where p.email_norm = address order by m.created_at limit 1 $$;
     create function take_notice(notice uuid) returns notices
       language sql security definer set search_path = public, pg_temp as $$
       update notices set tries = tries + 1 where id = notice and state = 'waiting' returning * $$;
@@ -245,7 +250,7 @@ export async function up(knex: Knex): Promise<void> {
       for each row execute function guard_cutting();
 
     revoke all on all functions in schema public from public;
-    grant execute on function tell_shop(uuid, uuid, integer, text, text, text[]), tell_address(uuid, uuid, text, text, jsonb),
+    grant execute on function tell_shop(uuid, uuid, integer, text, text, text[]), tell_address(uuid, uuid, text, text, jsonb), tell_reset(uuid, text, jsonb),
       take_notice(uuid), close_notice(uuid, text, text), reader_of(uuid) to wiretag_app;
   `);
 }
@@ -255,7 +260,7 @@ export async function down(knex: Knex): Promise<void> {
   await knex.raw(`
     drop trigger orders_guard_cutting on orders;
     drop function guard_cutting(), reader_of(uuid), close_notice(uuid, text, text), take_notice(uuid),
-      tell_address(uuid, uuid, text, text, jsonb), tell_shop(uuid, uuid, integer, text, text, text[]);
+      tell_address(uuid, uuid, text, text, jsonb), tell_reset(uuid, text, jsonb), tell_shop(uuid, uuid, integer, text, text, text[]);
     drop table clock_legs, idempotency_keys, notices, feed, attachments, thread_reads, messages, events cascade;
     drop function guard_event(), feed_event();
   `);

@@ -113,3 +113,16 @@ export async function ownerOfShop(tx: Tx, shopId: string): Promise<string | unde
   const { rows } = await tx.raw<{ rows: { id: string | null }[] }>('select owner_of_shop(?) as id', [shopId]);
   return rows[0]?.id ?? undefined;
 }
+
+/** Writes a reset down if the address has an account; only the hash of its secret is kept. */
+export async function beginReset(
+  tx: Tx,
+  row: { readonly id: string; readonly email: string; readonly tokenHash: string },
+): Promise<boolean> {
+  return truth(tx, '(begin_reset(?, ?, ?) is not null)', [row.id, row.email, row.tokenHash]);
+}
+
+/** Takes a reset once, sets the password and ends the person's sign-ins; false for a used or old link. */
+export async function takeReset(tx: Tx, tokenHash: string, passwordHash: string): Promise<boolean> {
+  return truth(tx, '(take_reset(?, ?) is not null)', [tokenHash, passwordHash]);
+}

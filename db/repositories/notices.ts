@@ -39,3 +39,15 @@ export async function tellShop(
     [about.shopId, about.orderId, about.seq, about.kind, about.step, roles],
   );
 }
+
+/** Writes the notice of a password reset, for the person's own address. */
+export async function tellReset(
+  tx: Tx,
+  mail: { readonly id: string; readonly email: string; readonly resetId: string },
+): Promise<void> {
+  await tx.raw('select tell_reset(?, ?, ?::jsonb)', [
+    mail.id,
+    mail.email,
+    JSON.stringify({ resetId: mail.resetId }),
+  ]);
+}

@@ -61,6 +61,7 @@ const DEFINERS = [
     'take_reset',
     'take_try',
     'tell_address',
+    'tell_reset',
     'tell_shop',
   ],
 ];

@@ -4,6 +4,7 @@ import { begin } from '@/db/client';
 import { linkSecret } from '@/lib/adapters/links';
 import { changePerson, isSignedIn, signIn, signOut, switchShop, tokenHash } from '@/lib/services/identity';
 import { acceptInvitation, invitePerson, readInvitation } from '@/lib/services/invitations';
+import { askForReset, setNewPassword } from '@/lib/services/password-reset';
 import { changeShop, removePerson } from '@/lib/services/shop-settings';
 import { ownDatabase, readAsSuperuser } from '../support/database';
 import { buildPartner, buildPerson, buildShop, PASSWORD, ticketOf } from '../support/shops';
@@ -170,5 +171,39 @@ describe('settings', () => {
     expect(await begin(await ticketOf(shop.ownerEmail), (_tx, actor) => Promise.resolve(actor.unit))).toBe(
       'mm',
     );
+  });
+});
+
+describe('a new password by e-mail', () => {
+  it('says the same for an address that has no account, and writes nothing down for it', async () => {
+    await askForReset('nobody@shop.example');
+    expect(
+      await readAsSuperuser(
+        own.superuserUrl(),
+        `select 1 from notices where email_norm = 'nobody@shop.example'`,
+      ),
+    ).toEqual([]);
+  });
+
+  it('opens once, sets the password, and ends every sign-in of the person', async () => {
+    const shop = await buildShop();
+    await askForReset(shop.ownerEmail);
+    const [notice] = await readAsSuperuser<{ detail: { resetId: string } }>(
+      own.superuserUrl(),
+      'select detail from notices where email_norm = $1',
+      [shop.ownerEmail],
+    );
+    const secret = linkSecret('reset', notice?.detail.resetId ?? '');
+    await setNewPassword(secret, 'another-good-one');
+    expect(await isSignedIn(shop.owner)).toBe(false);
+    expect(await signIn({ email: shop.ownerEmail, password: PASSWORD, ...at })).toBeNull();
+    expect(await signIn({ email: shop.ownerEmail, password: 'another-good-one', ...at })).not.toBeNull();
+    await expect(setNewPassword(secret, 'a-third-one')).rejects.toMatchObject({ code: 'not_found' });
+  });
+
+  it('is asked for at most five times an hour', async () => {
+    const ask = () => askForReset('often@shop.example');
+    for (let tries = 0; tries < 5; tries += 1) await ask();
+    await expect(ask()).rejects.toMatchObject({ code: 'rate_limited' });
   });
 });

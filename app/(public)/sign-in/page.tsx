@@ -18,6 +18,7 @@ export default async function SignInPage() {
           <TextField name="password" label="Password" type="password" autoComplete="current-password" />
           <div className="flex flex-wrap items-center justify-between gap-3">
             <Submit>Sign in</Submit>
+            <a href="/new-password">Set a new password</a>
           </div>
         </Form>
       </Sheet>
