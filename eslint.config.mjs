@@ -13,7 +13,7 @@ const config = tseslint.config(
   { ignores: ['.next/**', '.wiretag/**', 'node_modules/**', 'next-env.d.ts', 'reports/**'] },
   js.configs.recommended,
   ...next,
-  { rules: { '@next/next/no-html-link-for-pages': 'off' } },
+  { rules: { '@next/next/no-html-link-for-pages': 'off', '@next/next/no-img-element': 'off' } },
   {
     files: ['**/*.ts', '**/*.tsx', '**/*.mts'],
     extends: [...tseslint.configs.strictTypeChecked, ...tseslint.configs.stylisticTypeChecked],

@@ -13,6 +13,7 @@ interface Entry {
   readonly side: Side;
   readonly at: Date;
   readonly body: string | null;
+  readonly files: readonly { readonly id: string; readonly name: string; readonly isPicture: boolean }[];
 }
 
 interface ThreadProps {
@@ -40,6 +41,7 @@ export function Thread({ entries, side, unit, timeZone, children }: ThreadProps)
               className="border-b border-rule-2 bg-granite px-4 py-2 text-[13.5px] text-ink-2"
             >
               {entry.shopName} {sayEvent(entry.type, entry.payload, unit)}
+              <Files files={entry.files} />
             </li>
           ) : (
             <li
@@ -54,6 +56,7 @@ export function Thread({ entries, side, unit, timeZone, children }: ThreadProps)
                 <span>{sayMoment(entry.at, timeZone)}</span>
               </p>
               <p className="whitespace-pre-wrap">{entry.body}</p>
+              <Files files={entry.files} />
               {entry.quietNote !== undefined && (
                 <p className="mt-1 text-[13.5px] text-tocut">▲ {entry.quietNote}</p>
               )}
@@ -63,5 +66,31 @@ export function Thread({ entries, side, unit, timeZone, children }: ThreadProps)
       </ol>
       {children !== undefined && <div className="p-4">{children}</div>}
     </section>
+  );
+}
+
+/** Pictures small, each opening large; other files by name. */
+function Files({ files }: { files: Entry['files'] }) {
+  if (files.length === 0) return null;
+  return (
+    <ul className="mt-2 flex flex-wrap gap-2">
+      {files.map(({ id, name, isPicture }) => (
+        <li key={id}>
+          <a href={`/api/v1/files/${id}`} target="_blank" rel="noreferrer">
+            {isPicture ? (
+              // The small picture comes by a link of one minute, so the framework's own image cache must not hold it.
+              <img
+                src={`/api/v1/files/${id}?small`}
+                alt={name}
+                className="max-h-28 border border-rule"
+                loading="lazy"
+              />
+            ) : (
+              name
+            )}
+          </a>
+        </li>
+      ))}
+    </ul>
   );
 }

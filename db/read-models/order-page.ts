@@ -36,6 +36,7 @@ export interface ThreadEntry {
   readonly side: Side;
   readonly at: Date;
   readonly body: string | null;
+  readonly files: readonly { readonly id: string; readonly name: string; readonly isPicture: boolean }[];
 }
 
 interface HeadRow {
@@ -77,7 +78,9 @@ export async function loadOrder(tx: Tx, actor: Actor, orderId: string): Promise<
 /** The thread and log of an order, oldest first. */
 export async function loadThread(tx: Tx, orderId: string): Promise<ThreadEntry[]> {
   const { rows } = await tx.raw<{ rows: ThreadEntry[] }>(
-    `select * from (select e.seq, e.type, e.payload, e.author_name as author, s.name as "shopName", e.side, e.occurred_at as at, m.body
+    `select * from (select e.seq, e.type, e.payload, e.author_name as author, s.name as "shopName", e.side, e.occurred_at as at, m.body,
+         coalesce((select json_agg(json_build_object('id', a.id, 'name', a.name, 'isPicture', a.thumb_key is not null) order by a.at)
+           from attachments a where a.order_id = e.order_id and (a.message_id = m.id or a.move_id::text = e.payload ->> 'moveId')), '[]') as files
        from events e join shops s on s.id = e.shop_id left join messages m on m.event_id = e.id
        where e.order_id = ? order by e.seq desc limit 300) latest order by seq`,
     [orderId],

@@ -1,5 +1,6 @@
 import 'server-only';
 import { begin } from '@/db/client';
+import { hangFiles } from '@/db/repositories/files';
 import { insertMessage, isWritten, markSeen } from '@/db/repositories/messages';
 import { tellShop } from '@/db/repositories/notices';
 import { findFacts, lockOrder } from '@/db/repositories/order-facts';
@@ -14,7 +15,12 @@ import { requirePermission } from '@/lib/services/permission';
 export async function writeMessage(
   ticket: Ticket,
   orderId: string,
-  message: { readonly id: string; readonly kind: 'message' | 'we_spoke'; readonly body: string },
+  message: {
+    readonly id: string;
+    readonly kind: 'message' | 'we_spoke';
+    readonly body: string;
+    readonly files?: readonly string[];
+  },
 ): Promise<{ id: string }> {
   return begin(ticket, async (tx, actor) => {
     requirePermission(actor, 'message');
@@ -29,6 +35,7 @@ export async function writeMessage(
       { type: `order.${message.kind}`, payload: { messageId: message.id } },
     ]);
     await insertMessage(tx, actor, { ...message, orderId, eventId, at });
+    await hangFiles(tx, actor, message.files ?? [], { orderId, messageId: message.id });
     const other = isSender ? facts.partner : facts.sender;
     if (other)
       await tellShop(

@@ -1,6 +1,7 @@
 import 'server-only';
 import { begin, type Tx } from '@/db/client';
 import { loadCalendars } from '@/db/read-models/calendars';
+import { hangFiles } from '@/db/repositories/files';
 import { once } from '@/db/repositories/idempotency';
 import { putTask, tellShop } from '@/db/repositories/notices';
 import { findFacts, lockOrder } from '@/db/repositories/order-facts';
@@ -23,6 +24,8 @@ export interface OrderCommandInput {
   readonly expectedVersion: number | null;
   readonly requestKey: string;
   readonly command: Command;
+  /** Files that go with a hand-over. */
+  readonly files?: readonly string[];
 }
 
 /** What a command answers: enough to show the order again. */
@@ -70,7 +73,10 @@ export async function commandIn(tx: Tx, actor: Actor, input: OrderCommandInput):
         },
       );
     }
-    return carryOut(tx, actor, facts, input.command);
+    const answer = await carryOut(tx, actor, facts, input.command);
+    const moveId = input.command.do === 'move_parts' ? input.command.parts[0]?.id : undefined;
+    if (moveId !== undefined) await hangFiles(tx, actor, input.files ?? [], { orderId: facts.id, moveId });
+    return answer;
   });
 }
 

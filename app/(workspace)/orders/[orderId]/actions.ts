@@ -194,13 +194,18 @@ const messageSchema = z.object({
   orderId: z.uuid(),
   requestKey: z.uuid(),
   body: wordsSchema.min(1, 'Write something first.'),
+  files: z.array(z.uuid()).max(20),
   weSpoke: z.string().optional(),
 });
 
 /** Writes to the other shop. */
-export const writeMessageAction = action(messageSchema, async ({ data, ask }) => {
-  const kind = data.weSpoke === 'yes' ? 'we_spoke' : 'message';
-  await writeMessage(ask, data.orderId, { id: data.requestKey, kind, body: data.body });
-  revalidatePath(`/orders/${data.orderId}`, 'layout');
-  return { done: 'Sent.' };
-});
+export const writeMessageAction = action(
+  messageSchema,
+  async ({ data, ask }) => {
+    const kind = data.weSpoke === 'yes' ? 'we_spoke' : 'message';
+    await writeMessage(ask, data.orderId, { id: data.requestKey, kind, body: data.body, files: data.files });
+    revalidatePath(`/orders/${data.orderId}`, 'layout');
+    return { done: 'Sent.' };
+  },
+  ['files'],
+);

@@ -39,6 +39,7 @@ export const PARTS_DEEDS: Deeds<'move_parts'> = {
       note: {
         kind,
         occurredAt,
+        moveId: parts[0]?.id,
         parts: parts.map(({ partId, pieces, stamps, kit, carrier, condition, replacesId }) => ({
           ...{
             kind: facts.parts.find((part) => part.id === partId)?.kind ?? '',

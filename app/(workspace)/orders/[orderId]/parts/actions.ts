@@ -20,6 +20,7 @@ const moveSchema = orderFormSchema.extend({
     .max(400)
     .transform((text) => (text === '' ? [] : text.split(/[\s,]+/))),
   kit: z.array(z.string().max(40)),
+  files: z.array(z.uuid()).max(20),
   carrier: wordsSchema,
   condition: wordsSchema,
   occurredAt: z.iso.datetime(),
@@ -38,9 +39,9 @@ export const movePartAction = action(
     const part = { id: requestKey, partId, pieces, stamps, kit, carrier, condition, replacesId };
     const command = { do: 'move_parts' as const, kind, parts: [part], occurredAt: data.occurredAt };
     // A counted hand-over is a fact: it is written whatever else changed on the order meanwhile.
-    await runOrderCommand(ask, { orderId, expectedVersion: null, requestKey, command });
+    await runOrderCommand(ask, { orderId, expectedVersion: null, requestKey, command, files: data.files });
     revalidatePath(`/orders/${orderId}`, 'layout');
     return { done: 'Written down.' };
   },
-  ['kit'],
+  ['kit', 'files'],
 );

@@ -4,6 +4,7 @@ import { OrderFrame } from '@/app/(workspace)/orders/_components/order-frame';
 import { movePartAction } from '@/app/(workspace)/orders/[orderId]/parts/actions';
 import { ChoiceField, TextField } from '@/components/forms/fields';
 import { Form, Submit } from '@/components/forms/form';
+import { PhotoPicker } from '@/components/thread/photo-picker';
 import { Notice } from '@/components/ui/notice';
 import { loadMoves } from '@/db/read-models/order-parts';
 import { now } from '@/lib/adapters/clock';
@@ -85,6 +86,7 @@ export default async function PartsPage(props: OrderPageProps) {
                     className="sm:col-span-2"
                   />
                 )}
+                <PhotoPicker orderId={facts.id} label="Add photos" />
                 <div>
                   <Submit>{DEEDS[next.kind].press}</Submit>
                 </div>
