@@ -1,3 +1,4 @@
+import { Scroll } from '@/components/ui/scroll';
 import { SizesTable } from '@/components/order/sizes-table';
 import { Sum } from '@/components/order/sum';
 import { Notice } from '@/components/ui/notice';
@@ -41,9 +42,9 @@ export function RevSheet({ rev, isCurrent, otherUnit, timeZone }: RevSheetProps)
       <h3 className="mb-2">
         {line.title} <span className="note font-normal">since rev {line.since}</span>
       </h3>
-      <div className="overflow-x-auto">
+      <Scroll label={`Sizes of ${line.title}`}>
         <SizesTable sizes={line.sizes} unit={rev.unit} otherUnit={otherUnit} />
-      </div>
+      </Scroll>
       <div className="mt-4 grid gap-5 md:grid-cols-2">
         <Sum steps={line.steps} />
         <div className="grid content-start gap-2">
@@ -57,7 +58,7 @@ export function RevSheet({ rev, isCurrent, otherUnit, timeZone }: RevSheetProps)
     </section>
   ));
   const head = `Rev ${rev.number}`;
-  const by = `${rev.author}, ${sayMoment(rev.releasedAt, timeZone)}${rev.reason === '' ? '' : `: ${rev.reason}`}`;
+  const by = `${rev.author}, ${sayMoment(rev.releasedAt, timeZone)}${rev.reason === '' ? '' : `: ${rev.reason.replace(/[.\s]+$/, '')}`}`;
   if (!isCurrent) {
     return (
       <details className="border-b border-rule-2 py-2">

@@ -1,3 +1,4 @@
+import { Scroll } from '@/components/ui/scroll';
 import { Ribbon, sayJudgement } from '@/components/readings/ribbon';
 import type { SizeFact } from '@/lib/domain/orders/facts';
 import { judge, outOfRound, type PlacedReading, taper } from '@/lib/domain/readings/judge';
@@ -27,7 +28,7 @@ export function ReadingsTable({ sizes, readings, unit }: ReadingsTableProps) {
   const cutting = sizes[0]?.cutting ?? 'smaller';
   const isBore = cutting === 'bigger';
   return (
-    <div className="overflow-x-auto">
+    <Scroll label="Readings">
       <table className="w-full min-w-[36rem] text-[15px]">
         <thead>
           <tr className="border-b border-rule text-left text-[13px] text-ink-3">
@@ -85,6 +86,6 @@ export function ReadingsTable({ sizes, readings, unit }: ReadingsTableProps) {
         <span>● machine shop ◆ rebuilder</span>
         <span>bigger: {isBore ? 'past size' : 'still to cut'} ▶</span>
       </p>
-    </div>
+    </Scroll>
   );
 }

@@ -62,7 +62,8 @@ export function Rail({ places, person, shop, shopId, shops, colleagues, actions 
       </form>
       <details className="group relative max-sm:ml-auto">
         <summary className="cursor-pointer list-none py-3 text-sm text-[#c9ced6]">
-          <b className="font-semibold text-white">{shop}</b> · {person} <span aria-hidden>▾</span>
+          <b className="font-semibold text-white">{shop}</b>
+          <span className="max-sm:hidden"> · {person}</span> <span aria-hidden>▾</span>
         </summary>
         <div className="sheet absolute right-0 z-20 grid w-72 gap-4 p-4 text-ink shadow-lg">
           {colleagues.length > 0 && (

@@ -72,9 +72,9 @@ interface LargePunchesProps {
 export function LargePunches({ punches, stopped, says }: LargePunchesProps) {
   return (
     <div className="relative">
-      <ul className="flex justify-between gap-3">
+      <ul className="flex justify-between gap-1 sm:gap-3">
         {NAMES.map((name) => (
-          <li key={name} className="w-28 text-center text-[13px] leading-tight text-manila-ink">
+          <li key={name} className="w-24 text-center text-[13px] leading-tight text-manila-ink sm:w-28">
             <Hole state={punches[name]} size={38} />
             <b className="mt-1.5 block text-[14.5px] font-semibold text-ink capitalize">{name}</b>
             {says[name]}

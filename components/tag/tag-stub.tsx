@@ -32,13 +32,15 @@ export function TagStub({
       <div
         className={`stub-face grid items-center gap-x-4 gap-y-2 border py-3 pr-4 sm:grid-cols-[52px_84px_minmax(0,1fr)_auto] lg:grid-cols-[52px_92px_minmax(0,1fr)_132px_150px_178px] ${face} grid-cols-[44px_minmax(0,1fr)_auto]`}
       >
-        <span aria-hidden className="stub-eye ml-5" />
-        <span className="font-stencil text-[25px] leading-none font-extrabold tracking-wide">{number}</span>
+        <span aria-hidden className="stub-eye ml-5 max-sm:col-start-1 max-sm:row-start-1" />
+        <span className="font-stencil text-[25px] leading-none font-extrabold tracking-wide max-sm:col-start-2 max-sm:row-start-1">
+          {number}
+        </span>
         <span className="max-sm:col-span-3 max-sm:pl-5">
           <b className="block font-semibold">{verb}</b>
           <span className="note">{sub}</span>
         </span>
-        <span className="max-sm:order-none max-sm:col-span-1 max-sm:row-start-1 max-sm:justify-self-end">
+        <span className="max-sm:col-start-3 max-sm:row-start-1">
           <SmallPunches punches={punches} stopped={stopped} />
         </span>
         <span className="note max-sm:col-span-2 max-sm:pl-5 lg:block">

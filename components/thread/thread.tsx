@@ -29,41 +29,45 @@ export function Thread({ entries, side, unit, timeZone, children }: ThreadProps)
   return (
     <section className="sheet" aria-label="Messages" id="messages">
       <h2 className="px-4 pt-4 pb-3 text-[17px]">Messages</h2>
-      <ol
-        className="max-h-[34rem] overflow-y-auto border-t border-rule-2"
+      {/* Turned round, so that the latest is in view without a script. */}
+      <div
+        className="flex max-h-[34rem] flex-col-reverse overflow-y-auto border-t border-rule-2"
+        role="region"
         tabIndex={0}
         aria-label="Messages and events"
       >
-        {entries.map((entry) =>
-          entry.body === null ? (
-            <li
-              key={entry.seq}
-              className="border-b border-rule-2 bg-granite px-4 py-2 text-[13.5px] text-ink-2"
-            >
-              {entry.shopName} {sayEvent(entry.type, entry.payload, unit)}
-              <Files files={entry.files} />
-            </li>
-          ) : (
-            <li
-              key={entry.seq}
-              className={`border-b border-l-4 border-rule-2 px-4 py-3 ${entry.side === side ? 'border-l-blue' : 'border-l-brass'}`}
-            >
-              <p className="flex justify-between gap-3 text-[13px] text-ink-3">
-                <span>
-                  {entry.shopName}, {entry.author}
-                  {entry.type === 'order.we_spoke' ? ' · we spoke' : ''}
-                </span>
-                <span>{sayMoment(entry.at, timeZone)}</span>
-              </p>
-              <p className="whitespace-pre-wrap">{entry.body}</p>
-              <Files files={entry.files} />
-              {entry.quietNote !== undefined && (
-                <p className="mt-1 text-[13.5px] text-tocut">▲ {entry.quietNote}</p>
-              )}
-            </li>
-          ),
-        )}
-      </ol>
+        <ol>
+          {entries.map((entry) =>
+            entry.body === null ? (
+              <li
+                key={entry.seq}
+                className="border-b border-rule-2 bg-granite px-4 py-2 text-[13.5px] text-ink-2"
+              >
+                {entry.shopName} {sayEvent(entry.type, entry.payload, unit)}
+                <Files files={entry.files} />
+              </li>
+            ) : (
+              <li
+                key={entry.seq}
+                className={`border-b border-l-4 border-rule-2 px-4 py-3 ${entry.side === side ? 'border-l-blue' : 'border-l-brass'}`}
+              >
+                <p className="flex justify-between gap-3 text-[13px] text-ink-3">
+                  <span>
+                    {entry.shopName}, {entry.author}
+                    {entry.type === 'order.we_spoke' ? ' · we spoke' : ''}
+                  </span>
+                  <span>{sayMoment(entry.at, timeZone)}</span>
+                </p>
+                <p className="whitespace-pre-wrap">{entry.body}</p>
+                <Files files={entry.files} />
+                {entry.quietNote !== undefined && (
+                  <p className="mt-1 text-[13.5px] text-tocut">▲ {entry.quietNote}</p>
+                )}
+              </li>
+            ),
+          )}
+        </ol>
+      </div>
       {children !== undefined && <div className="p-4">{children}</div>}
     </section>
   );

@@ -1,5 +1,6 @@
 'use client';
 
+import { Scroll } from '@/components/ui/scroll';
 import type { ReactNode } from 'react';
 import type { Made } from '@/lib/domain/builds/made';
 import { type Filled, pathsOf, type Raw, rowsOf } from '@/lib/domain/operations/fill';
@@ -147,7 +148,7 @@ function Grid(props: OneProps) {
   const { operation, field, made, name } = props;
   return (
     <Around field={field}>
-      <div className="overflow-x-auto">
+      <Scroll label={field.label}>
         <table className="w-full text-[15px]">
           <thead>
             <tr className="border-b border-rule text-left text-[13px] text-ink-3">
@@ -178,7 +179,7 @@ function Grid(props: OneProps) {
             ))}
           </tbody>
         </table>
-      </div>
+      </Scroll>
     </Around>
   );
 }

@@ -78,10 +78,13 @@ async function loadSide(tx: Tx, actor: Actor): Promise<Pick<Bench, 'places' | 'c
          select case when p.place = 'home' then 'Here' when p.place = 'partner' then coalesce(o.name, 'Elsewhere') else 'On the road' end as name,
            case when p.place = 'home' then 0 when p.place = 'partner' then 1 else 2 end as rank, sum(p.pieces)::int as pieces
          from part_places p left join order_sides s on s.order_id = p.order_id and s.shop_id = ? left join shops o on o.id = s.other_shop_id
-         where p.shop_id = ? and p.pieces > 0 group by 1, 2) x), '[]') as places,
+         where p.shop_id = ? and p.pieces > 0 group by 1, 2
+         union all
+         select 'Here, from ' || o.name, 1, sum(p.pieces)::int from part_places p join order_sides s on s.order_id = p.order_id and s.shop_id = ?
+           join shops o on o.id = s.other_shop_id where s.side = 'partner' and p.place = 'partner' and p.pieces > 0 group by 1, 2) x), '[]') as places,
        coalesce((select json_agg(x) from (select s.order_id as "orderId", s.number, s.title, s.promised_on::text as "promisedOn" from order_sides s
          where s.shop_id = ? and s.side = 'sender' and s.open and s.promised_on is not null order by s.promised_on, s.number limit 6) x), '[]') as "comingBack"`,
-    [actor.shopId, actor.shopId, actor.shopId],
+    [actor.shopId, actor.shopId, actor.shopId, actor.shopId],
   );
   return rows[0] ?? { places: [], comingBack: [] };
 }

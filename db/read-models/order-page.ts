@@ -2,6 +2,7 @@ import 'server-only';
 import type { Tx } from '@/db/client';
 import { findFacts } from '@/db/repositories/order-facts';
 import type { Actor } from '@/lib/domain/actor';
+import type { Made } from '@/lib/domain/builds/made';
 import type { CommandKind } from '@/lib/domain/orders/commands';
 import { allowedCommands } from '@/lib/domain/orders/decide';
 import type { Facts, Side } from '@/lib/domain/orders/facts';
@@ -15,6 +16,8 @@ export interface OrderView {
   readonly allowed: readonly CommandKind[];
   readonly title: string;
   readonly engine: string;
+  /** How the engine is made, as it was when the order was drafted. */
+  readonly made: Made | null;
   /** Of the sender only. */
   readonly buildNumber: number | null;
   readonly notes: string;
@@ -41,6 +44,7 @@ export interface ThreadEntry {
 
 interface HeadRow {
   title: string;
+  made: Made | null;
   engine: string;
   buildNumber: number | null;
   notes: string;
@@ -57,6 +61,7 @@ export async function loadOrder(tx: Tx, actor: Actor, orderId: string): Promise<
   const { rows } = await tx.raw<{ rows: HeadRow[] }>(
     `select o.title, o.notes, o.standing_instruction as "standingInstruction", o.transport,
        coalesce((select p.engine from order_parts p where p.order_id = o.id and p.engine <> '' limit 1), '') as engine,
+       (select p.made from order_parts p where p.order_id = o.id and p.made is not null limit 1) as made,
        (select b.number from builds b where b.id = o.build_id) as "buildNumber",
        coalesce((select r.text from order_references r where r.order_id = o.id and r.shop_id = ?), '') as reference,
        (select v.released_at from revs v where v.order_id = o.id and v.number = o.latest_rev) as "revAt"

@@ -1,3 +1,4 @@
+import { Scroll } from '@/components/ui/scroll';
 import { Empty } from '@/components/ui/empty';
 import { begin } from '@/db/client';
 import { loadBuilds } from '@/db/read-models/builds';
@@ -23,33 +24,35 @@ export default async function BuildsPage() {
           A build is one engine: how it is made, its parts, and the work they need.
         </Empty>
       ) : (
-        <div className="sheet overflow-x-auto">
-          <table className="w-full text-[15px]">
-            <thead>
-              <tr className="border-b border-rule text-left text-[13px] text-ink-3">
-                <th className="px-4 py-2 font-medium">Build</th>
-                <th className="px-4 py-2 font-medium">Engine</th>
-                <th className="px-4 py-2 font-medium">Customer</th>
-                <th className="px-4 py-2 font-medium">Parts</th>
-                <th className="px-4 py-2 font-medium">Open orders</th>
-                <th className="px-4 py-2 font-medium">Needed</th>
-              </tr>
-            </thead>
-            <tbody>
-              {builds.map((build) => (
-                <tr key={build.id} className="border-b border-rule-2">
-                  <th scope="row" className="px-4 py-2.5 text-left">
-                    <a href={`/builds/${build.id}`}>B-{build.number}</a>
-                  </th>
-                  <td className="px-4">{build.engine}</td>
-                  <td className="px-4">{build.customerName}</td>
-                  <td className="num px-4">{build.parts}</td>
-                  <td className="num px-4">{build.openOrders}</td>
-                  <td className="px-4">{build.neededOn === null ? '' : sayDay(build.neededOn, year)}</td>
+        <div className="sheet">
+          <Scroll label="Builds">
+            <table className="w-full text-[15px]">
+              <thead>
+                <tr className="border-b border-rule text-left text-[13px] text-ink-3">
+                  <th className="px-4 py-2 font-medium">Build</th>
+                  <th className="px-4 py-2 font-medium">Engine</th>
+                  <th className="px-4 py-2 font-medium">Customer</th>
+                  <th className="px-4 py-2 font-medium">Parts</th>
+                  <th className="px-4 py-2 font-medium">Open orders</th>
+                  <th className="px-4 py-2 font-medium">Needed</th>
                 </tr>
-              ))}
-            </tbody>
-          </table>
+              </thead>
+              <tbody>
+                {builds.map((build) => (
+                  <tr key={build.id} className="border-b border-rule-2">
+                    <th scope="row" className="px-4 py-2.5 text-left">
+                      <a href={`/builds/${build.id}`}>B-{build.number}</a>
+                    </th>
+                    <td className="px-4">{build.engine}</td>
+                    <td className="px-4">{build.customerName}</td>
+                    <td className="num px-4">{build.parts}</td>
+                    <td className="num px-4">{build.openOrders}</td>
+                    <td className="px-4">{build.neededOn === null ? '' : sayDay(build.neededOn, year)}</td>
+                  </tr>
+                ))}
+              </tbody>
+            </table>
+          </Scroll>
         </div>
       )}
     </main>

@@ -1,5 +1,6 @@
 import { notFound } from 'next/navigation';
 import { MoveBars } from '@/components/charts/move-bars';
+import { Scroll } from '@/components/ui/scroll';
 import { Empty } from '@/components/ui/empty';
 import { begin } from '@/db/client';
 import { loadCalendars } from '@/db/read-models/calendars';
@@ -113,42 +114,44 @@ function Figure({ value, words }: { value: string; words: string }) {
 function Rows({ title, rows }: { title: string; rows: readonly TurnaroundRow[] }) {
   const heads = ['Orders', 'Half by', 'Nine in ten', 'On time', 'Our move', 'Road', 'Their move', 'Snag'];
   return (
-    <section className="mt-6 overflow-x-auto">
+    <section className="mt-6">
       <h2 className="text-[17px]">{title}</h2>
-      <table className="w-full text-[15px]">
-        <thead>
-          <tr className="border-b border-rule text-[13px] text-ink-3">
-            <th className="py-2 text-left font-medium">
-              {title.replace('By ', '').replace(/^./, (letter) => letter.toUpperCase())}
-            </th>
-            {heads.map((head) => (
-              <th key={head} className="px-2 py-2 text-right font-medium">
-                {head}
+      <Scroll label={title}>
+        <table className="w-full text-[15px]">
+          <thead>
+            <tr className="border-b border-rule text-[13px] text-ink-3">
+              <th className="py-2 text-left font-medium">
+                {title.replace('By ', '').replace(/^./, (letter) => letter.toUpperCase())}
               </th>
-            ))}
-          </tr>
-        </thead>
-        <tbody>
-          {rows.map((row) => (
-            <tr key={row.group} className="border-b border-rule-2">
-              <th scope="row" className="py-2 text-left font-normal">
-                {row.group}
-              </th>
-              {[
-                String(row.orders),
-                row.median.toFixed(1),
-                row.nineInTen.toFixed(1),
-                percent(row.onTime),
-                ...(['sender', 'road', 'partner', 'snag'] as const).map((key) => percent(row.shares[key])),
-              ].map((value, index) => (
-                <td key={heads[index]} className="num px-2 text-right">
-                  {value}
-                </td>
+              {heads.map((head) => (
+                <th key={head} className="px-2 py-2 text-right font-medium">
+                  {head}
+                </th>
               ))}
             </tr>
-          ))}
-        </tbody>
-      </table>
+          </thead>
+          <tbody>
+            {rows.map((row) => (
+              <tr key={row.group} className="border-b border-rule-2">
+                <th scope="row" className="py-2 text-left font-normal">
+                  {row.group}
+                </th>
+                {[
+                  String(row.orders),
+                  row.median.toFixed(1),
+                  row.nineInTen.toFixed(1),
+                  percent(row.onTime),
+                  ...(['sender', 'road', 'partner', 'snag'] as const).map((key) => percent(row.shares[key])),
+                ].map((value, index) => (
+                  <td key={heads[index]} className="num px-2 text-right">
+                    {value}
+                  </td>
+                ))}
+              </tr>
+            ))}
+          </tbody>
+        </table>
+      </Scroll>
     </section>
   );
 }

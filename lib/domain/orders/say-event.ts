@@ -79,7 +79,7 @@ export function sayEvent(type: string, payload: Payload, unit: LengthUnit): stri
 }
 
 function because(reason: unknown): string {
-  return typeof reason === 'string' && reason !== '' ? `: ${reason}` : '';
+  return typeof reason === 'string' && reason !== '' ? `: ${reason.replace(/[.\s]+$/, '')}` : '';
 }
 
 function promised(day: unknown, days: unknown): string {

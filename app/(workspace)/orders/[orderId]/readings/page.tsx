@@ -6,6 +6,7 @@ import { decideAction, reportAction } from '@/app/(workspace)/orders/[orderId]/r
 import { SelectField, TextArea } from '@/components/forms/fields';
 import { Form, Submit } from '@/components/forms/form';
 import { ReadingsEntry } from '@/components/readings/entry';
+import { PartMap } from '@/components/readings/part-map';
 import { ReadingsTable } from '@/components/readings/readings-table';
 import type { OrderView } from '@/db/read-models/order-page';
 import { loadReadings, type DecisionView, type ReadingView } from '@/db/read-models/order-readings';
@@ -97,6 +98,9 @@ function LineSection({ line, view, actor, readings, decisions, isCut }: LineSect
         >
           <Submit>Put it on the machine</Submit>
         </Form>
+      )}
+      {sizes.length > 0 && view.made && (
+        <PartMap made={view.made} operation={line.operation} sizes={sizes} readings={own} />
       )}
       {sizes.length > 0 && <ReadingsTable sizes={sizes} readings={own} unit={facts.sender.unit} />}
       {mayRead && (
