@@ -117,6 +117,8 @@ function isOutage(error: unknown): boolean {
   if ('code' in error && typeof error.code === 'string' && OUTAGE_CODES.has(error.code)) return true;
   return (
     error instanceof knex.KnexTimeoutError ||
-    /Connection terminated|timeout exceeded when trying to connect/.test(error.message)
+    /Connection terminated|timeout exceeded when trying to connect|not currently accepting connections/.test(
+      error.message,
+    )
   );
 }

@@ -22,7 +22,7 @@ const SAYINGS: Readonly<Record<string, Say>> = {
       list(sizes)
         .map((one) => `${text(one['what'])} ${size(one['lower'])} to ${size(one['upper'])}`)
         .join(', '),
-    )}${because(reason)}${stop === true ? ' STOP: the line being cut waits for an answer.' : ''}`,
+    )}${because(reason)}${stop === true ? '. STOP: the line being cut waits for an answer' : ''}`,
   'order.repeat_back': ({ rev, matches, said }) =>
     matches === true
       ? `repeated the sizes back: the same as rev ${text(rev)}`
