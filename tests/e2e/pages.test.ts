@@ -29,7 +29,10 @@ const BUILD = demoId('build six');
 /** Every page of the product with an address that shows it, and who may: anything not listed here fails. */
 const PAGES: Readonly<Record<string, { readonly at: string; readonly opens: readonly Asker[] }>> = {
   'page.tsx': { at: '/', opens: ['sender', 'counter', 'partner', 'stranger'] },
-  '(public)/sign-in/page.tsx': { at: '/sign-in', opens: ['nobody'] },
+  '(public)/sign-in/page.tsx': {
+    at: '/sign-in',
+    opens: ['nobody', 'sender', 'counter', 'partner', 'stranger'],
+  },
   '(public)/new-shop/page.tsx': {
     at: '/new-shop',
     opens: ['nobody', 'sender', 'counter', 'partner', 'stranger'],
