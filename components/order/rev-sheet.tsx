@@ -3,6 +3,7 @@ import { SizesTable } from '@/components/order/sizes-table';
 import { Sum } from '@/components/order/sum';
 import { Notice } from '@/components/ui/notice';
 import type { Length, LengthUnit } from '@/lib/domain/quantity/length';
+import type { PartnerFigures } from '@/lib/domain/sizes/partner-figures';
 import { sayMoment } from '@/lib/forms/say';
 
 interface RevSheetProps {
@@ -27,6 +28,7 @@ interface RevSheetProps {
         readonly target: Length;
         readonly lower: Length;
         readonly upper: Length;
+        readonly partner: PartnerFigures | null;
       }[];
     }[];
   };

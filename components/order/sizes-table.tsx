@@ -1,5 +1,6 @@
 import { type Length, type LengthUnit, subtract } from '@/lib/domain/quantity/length';
-import { printNear } from '@/lib/domain/quantity/print-length';
+import type { PartnerFigures } from '@/lib/domain/sizes/partner-figures';
+import { printLength, printNear } from '@/lib/domain/quantity/print-length';
 
 interface SizeRow {
   readonly feature: string;
@@ -7,12 +8,14 @@ interface SizeRow {
   readonly target: Length;
   readonly lower: Length;
   readonly upper: Length;
+  /** The figures released in the partner's unit. */
+  readonly partner?: PartnerFigures | null;
 }
 
 interface SizesTableProps {
   sizes: readonly SizeRow[];
   unit: LengthUnit;
-  /** The unit of the shop that reads, shown as a help where it is another one. */
+  /** The other shop's unit: its released figures stand below, exactly as they are to be keyed back. */
   otherUnit?: LengthUnit | undefined;
 }
 
@@ -37,11 +40,7 @@ export function SizesTable({ sizes, unit, otherUnit }: SizesTableProps) {
             </th>
             <td className="num text-right text-[20px] font-semibold">
               {printNear(group.target, unit)}
-              {otherUnit !== undefined && (
-                <span className="note block font-normal">
-                  {printNear(group.target, otherUnit)} {otherUnit}
-                </span>
-              )}
+              <Released unit={otherUnit} value={group.partner?.target} />
             </td>
             <td className="num text-right">
               {printNear(subtract(group.upper, group.target), unit, { signed: true })}
@@ -51,12 +50,27 @@ export function SizesTable({ sizes, unit, otherUnit }: SizesTableProps) {
                 '−.0000',
               )}
             </td>
-            <td className="num text-right">{printNear(group.lower, unit)}</td>
-            <td className="num text-right">{printNear(group.upper, unit)}</td>
+            <td className="num text-right">
+              {printNear(group.lower, unit)}
+              <Released unit={otherUnit} value={group.partner?.lower} />
+            </td>
+            <td className="num text-right">
+              {printNear(group.upper, unit)}
+              <Released unit={otherUnit} value={group.partner?.upper} />
+            </td>
           </tr>
         ))}
       </tbody>
     </table>
+  );
+}
+
+function Released({ unit, value }: { unit: LengthUnit | undefined; value: Length | undefined }) {
+  if (unit === undefined || value === undefined) return null;
+  return (
+    <span className="note block font-normal">
+      {printLength(value, unit)} {unit}
+    </span>
   );
 }
 

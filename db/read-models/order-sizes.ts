@@ -2,6 +2,7 @@ import 'server-only';
 import type { Tx } from '@/db/client';
 import { findWorksheets, type WorksheetRow } from '@/db/repositories/worksheets';
 import type { Length } from '@/lib/domain/quantity/length';
+import type { PartnerFigures } from '@/lib/domain/sizes/partner-figures';
 
 export interface RevLineView {
   readonly lineId: string;
@@ -16,6 +17,8 @@ export interface RevLineView {
     readonly target: Length;
     readonly lower: Length;
     readonly upper: Length;
+    /** The figures released in the partner's unit, rounded inward; null where both shops use one unit. */
+    readonly partner: PartnerFigures | null;
   }[];
 }
 
@@ -50,7 +53,9 @@ export async function loadSizes(tx: Tx, orderId: string): Promise<SizesView> {
     `select coalesce((select json_agg(x order by x.number desc) from (
          select v.number, v.unit, v.reason, v.author_name as author, v.released_at as "releasedAt",
            (select json_agg(json_build_object('lineId', l.line_id, 'title', o.title, 'since', l.since, 'source', l.source, 'steps', l.steps, 'checks', l.checks,
-              'sizes', (select json_agg(json_build_object('feature', z.feature, 'what', z.what, 'target', z.target_nm, 'lower', z.lower_nm, 'upper', z.upper_nm) order by z.position)
+              'sizes', (select json_agg(json_build_object('feature', z.feature, 'what', z.what, 'target', z.target_nm, 'lower', z.lower_nm, 'upper', z.upper_nm,
+                'partner', case when z.partner_target_nm is null then null else
+                  json_build_object('target', z.partner_target_nm, 'lower', z.partner_lower_nm, 'upper', z.partner_upper_nm) end) order by z.position)
                 from rev_sizes z where z.order_id = l.order_id and z.rev = l.rev and z.line_id = l.line_id)) order by o.position)
             from rev_lines l join order_lines o on o.id = l.line_id where l.order_id = v.order_id and l.rev = v.number) as lines
          from revs v where v.order_id = ?) x), '[]') as revs,

@@ -29,7 +29,8 @@ export default async function SizesPage(props: OrderPageProps) {
   const { facts, side, allowed } = view;
   const due = sizesToRepeat(facts);
   const mayRepeat = allowed.includes('repeat_back') && due.length > 0;
-  const otherUnit = actor.unit === facts.sender.unit ? undefined : actor.unit;
+  const otherUnit =
+    facts.partner && facts.partner.unit !== facts.sender.unit ? facts.partner.unit : undefined;
   const isOpenForKeying = mayRepeat && !facts.lines.some((line) => line.stopDue);
   const refused = sizes.said.filter((said) => !said.matches);
   return (
