@@ -19,6 +19,7 @@ export default async function WorkspaceLayout({ children }: { children: ReactNod
     { href: '/bench', label: 'Bench' },
     { href: '/builds', label: 'Builds' },
     { href: '/orders', label: 'Work orders' },
+    { href: '/parts', label: 'Parts' },
     { href: '/shops', label: 'Shops' },
     ...(can(shell.actor, 'turnaround') ? [{ href: '/turnaround', label: 'Turnaround' }] : []),
   ];

@@ -97,6 +97,7 @@ const PAGES: Readonly<Record<string, { readonly at: string; readonly opens: read
     opens: [],
   },
   '(workspace)/shops/page.tsx': { at: '/shops', opens: ['sender', 'counter', 'partner', 'stranger'] },
+  '(workspace)/parts/page.tsx': { at: '/parts', opens: ['sender', 'counter', 'partner', 'stranger'] },
   '(workspace)/settings/page.tsx': { at: '/settings', opens: ['sender', 'counter', 'partner', 'stranger'] },
   '(workspace)/turnaround/page.tsx': { at: '/turnaround', opens: ['sender', 'partner', 'stranger'] },
   'print/order/[orderId]/page.tsx': { at: `/print/order/${ORDER}`, opens: ['sender', 'counter', 'partner'] },

@@ -45,5 +45,6 @@ const addSchema = z.intersection(
 export const addPartAction = action(addSchema, async ({ data: { requestKey, ...part }, ask }) => {
   await addPart(ask, requestKey, part);
   revalidatePath('/builds', 'layout');
+  revalidatePath('/parts');
   return { done: `Added: ${part.pieces} ${part.kind}.` };
 });

@@ -2,16 +2,16 @@ import { randomUUID } from 'node:crypto';
 import { notFound } from 'next/navigation';
 import { z } from 'zod';
 import { addPartAction, changeBuildAction } from '@/app/(workspace)/builds/actions';
+import { PartFields } from '@/components/builds/part-fields';
 import { BuildFields } from '@/components/builds/build-fields';
 import { Form, Submit } from '@/components/forms/form';
-import { SelectField, TextField } from '@/components/forms/fields';
 import { CrankMap } from '@/components/parts-map/crank-map';
 import { Sheet } from '@/components/ui/sheet';
 import { begin } from '@/db/client';
-import { loadBuild, type PartView } from '@/db/read-models/builds';
+import { loadBuild } from '@/db/read-models/builds';
 import { requirePageTicket } from '@/lib/auth/ticket';
 import { describeMade, PRESETS } from '@/lib/domain/builds/presets';
-import { PART_KINDS } from '@/lib/schemas/build';
+import { sayWhereabouts } from '@/lib/forms/part-words';
 
 export const metadata = { title: 'Build' };
 
@@ -51,7 +51,7 @@ export default async function BuildPage({ params }: { params: Promise<{ buildId:
                   {part.stamps.length > 0 && <span className="num">stamp {part.stamps.join(' ')}</span>}
                   {part.makerNo !== '' && <span className="note">no. {part.makerNo}</span>}
                   {part.condition !== '' && <span className="note">{part.condition}</span>}
-                  <span className="note ml-auto">{sayWhere(part)}</span>
+                  <span className="note ml-auto">{sayWhereabouts(part)}</span>
                 </li>
               ))}
             </ul>
@@ -62,20 +62,7 @@ export default async function BuildPage({ params }: { params: Promise<{ buildId:
               className="mt-4 grid gap-3 sm:grid-cols-2"
               label="Add a part"
             >
-              <SelectField
-                name="kind"
-                label="Add a part"
-                options={PART_KINDS.map((kind) => ({ value: kind, label: kind }))}
-              />
-              <TextField name="pieces" label="Pieces" defaultValue="1" mono />
-              <TextField
-                name="stamps"
-                label="Stamps"
-                hint="One a piece, with spaces between, or none."
-                mono
-              />
-              <TextField name="makerNo" label="Maker’s or casting number" mono />
-              <TextField name="condition" label="Condition" className="sm:col-span-2" />
+              <PartFields />
               <div>
                 <Submit kind="ghost">Add the part</Submit>
               </div>
@@ -114,13 +101,4 @@ export default async function BuildPage({ params }: { params: Promise<{ buildId:
       </div>
     </main>
   );
-}
-
-function sayWhere(part: PartView): string {
-  const words = part.where.map(({ place, pieces, shop }) => {
-    const at =
-      place === 'home' ? 'here' : place === 'partner' ? `at ${shop ?? 'the machine shop'}` : 'on the road';
-    return part.pieces === 1 ? at : `${pieces} ${at}`;
-  });
-  return words.join(', ');
 }

@@ -48,6 +48,18 @@ export const discardAction = action(orderFormSchema, async ({ data, ask }) => {
   redirect('/orders');
 });
 
+const changeSchema = orderFormSchema.extend({
+  neededBackOn: daySchema,
+  notes: wordsSchema,
+  standingInstruction: wordsSchema,
+});
+
+/** Changes an order that has been sent; a price that was named is void from then on. */
+export const changeAction = action(changeSchema, ({ data, ask }) => {
+  const { neededBackOn, notes, standingInstruction } = data;
+  return press(ask, data, { do: 'change', neededBackOn, notes, standingInstruction }, 'Changed.');
+});
+
 /** Names a price. */
 export const quoteAction = action(quoteSchema, ({ data, ask }) => {
   const { kind, lines, extras, tax, promisedOn, promiseDays, validUntil, note } = data;

@@ -3,6 +3,7 @@ import type { ReactNode } from 'react';
 import {
   answerHoldAction,
   answerSnagAction,
+  changeAction,
   discardAction,
   endAction,
   holdAction,
@@ -143,6 +144,28 @@ export function OrderDeeds({ view }: { view: OrderView }) {
           </Form>
         </Folded>
       )}
+      {may('change') && (
+        <Folded title="Change the order">
+          <Form action={changeAction} {...carried()} className="grid gap-3" label="Change the order">
+            {facts.status === 'quoted' && (
+              <p className="note">A price has been named. Changing the order makes it void.</p>
+            )}
+            <TextField
+              name="neededBackOn"
+              label="Needed back"
+              type="date"
+              defaultValue={facts.neededBackOn ?? ''}
+            />
+            <TextArea name="notes" label="Notes for the machine shop" defaultValue={view.notes} />
+            <TextArea
+              name="standingInstruction"
+              label="Standing instruction"
+              defaultValue={view.standingInstruction}
+            />
+            <Submit kind="ghost">Change it</Submit>
+          </Form>
+        </Folded>
+      )}
       {may('move_promise') && (
         <Folded title="Move the promise">
           <Form action={movePromiseAction} {...carried()} className="grid gap-3" label="Move the promise">
@@ -151,6 +174,11 @@ export function OrderDeeds({ view }: { view: OrderView }) {
             <Submit>Move the promise</Submit>
           </Form>
         </Folded>
+      )}
+      {side === 'sender' && facts.status !== 'draft' && (
+        <a href={`/orders/new?like=${facts.id}`} className="btn btn-ghost">
+          Another order like this
+        </a>
       )}
       {(['withdraw', 'decline', 'cancel'] as const).filter(may).map((deed) => (
         <Folded key={deed} title={ENDINGS[deed]}>

@@ -1,4 +1,5 @@
 import { randomUUID } from 'node:crypto';
+import { z } from 'zod';
 import { createDraftAction } from '@/app/(workspace)/orders/new/actions';
 import { ChoiceField, SelectField, TextArea, TextField } from '@/components/forms/fields';
 import { Form, Submit } from '@/components/forms/form';
@@ -6,6 +7,7 @@ import { Empty } from '@/components/ui/empty';
 import { Sheet } from '@/components/ui/sheet';
 import { begin } from '@/db/client';
 import { loadParts } from '@/db/read-models/builds';
+import { loadOrder } from '@/db/read-models/order-page';
 import { loadPartners } from '@/db/read-models/partners';
 import { requirePageTicket } from '@/lib/auth/ticket';
 import { OPERATIONS } from '@/lib/domain/operations/catalogue';
@@ -22,8 +24,11 @@ const ACCEPT = [
   { value: 'readings', label: 'On their readings' },
 ];
 
-export default async function NewOrderPage() {
-  const { partners, parts } = await begin(await requirePageTicket(), async (tx, actor) => ({
+export default async function NewOrderPage({ searchParams }: { searchParams: Promise<{ like?: string }> }) {
+  const likeId = z.uuid().safeParse((await searchParams).like);
+  const { partners, parts, like } = await begin(await requirePageTicket(), async (tx, actor) => ({
+    // An earlier order to begin from: what was asked of whom; its parts, sizes and price stay with it.
+    like: likeId.success ? await loadOrder(tx, actor, likeId.data) : undefined,
     partners: await loadPartners(tx, actor),
     parts: await loadParts(tx, actor),
   }));
@@ -58,6 +63,7 @@ export default async function NewOrderPage() {
               <SelectField
                 name="partnerShopId"
                 label="To"
+                defaultValue={like?.facts.partner?.shopId ?? ''}
                 options={[
                   { value: '', label: 'Choose the machine shop' },
                   ...shops.map(({ shopId, name, isHere }) => ({
@@ -81,6 +87,7 @@ export default async function NewOrderPage() {
                 kind="checkbox"
                 name="operations"
                 label="What is to be done"
+                defaultValue={like?.facts.lines.map((line) => line.operation).join('\n') ?? ''}
                 options={OPERATIONS.map((operation) => ({
                   value: operation.key,
                   label: operation.title,
@@ -109,10 +116,16 @@ export default async function NewOrderPage() {
                 defaultValue="own_check"
                 className="sm:col-span-2"
               />
-              <TextArea name="notes" label="Notes for the machine shop" className="sm:col-span-2" />
+              <TextArea
+                name="notes"
+                label="Notes for the machine shop"
+                defaultValue={like?.notes ?? ''}
+                className="sm:col-span-2"
+              />
               <TextArea
                 name="standingInstruction"
                 label="Standing instruction"
+                defaultValue={like?.standingInstruction ?? ''}
                 hint="An answer given ahead: if it will not clean up go to .020, spend up to so much without asking, or stop and ring."
                 className="sm:col-span-2"
               />

@@ -1,0 +1,74 @@
+import { randomUUID } from 'node:crypto';
+import { addPartAction } from '@/app/(workspace)/builds/actions';
+import { PartFields } from '@/components/builds/part-fields';
+import { Form, Submit } from '@/components/forms/form';
+import { Scroll } from '@/components/ui/scroll';
+import { Sheet } from '@/components/ui/sheet';
+import { begin } from '@/db/client';
+import { loadParts } from '@/db/read-models/builds';
+import { requirePageTicket } from '@/lib/auth/ticket';
+import { can } from '@/lib/domain/actor';
+import { sayWhereabouts } from '@/lib/forms/part-words';
+
+export const metadata = { title: 'Parts' };
+
+export default async function PartsPage() {
+  const { parts, actor } = await begin(await requirePageTicket(), async (tx, asker) => ({
+    parts: await loadParts(tx, asker),
+    actor: asker,
+  }));
+  return (
+    <main className="page">
+      <h1 className="mb-4">Parts</h1>
+      <div className="grid items-start gap-5 xl:grid-cols-[minmax(0,1fr)_372px]">
+        <Sheet title="Everything of ours, and who has it">
+          {parts.length === 0 && <p className="note">No parts are written down yet.</p>}
+          <Scroll label="Parts">
+            <table className="w-full text-[15px]">
+              <thead>
+                <tr className="border-b border-rule text-left text-[13px] text-ink-3">
+                  <th className="py-2 pr-3 font-medium">Part</th>
+                  <th className="py-2 pr-3 font-medium">Stamp</th>
+                  <th className="py-2 pr-3 font-medium">Build</th>
+                  <th className="py-2 font-medium">Who has it</th>
+                </tr>
+              </thead>
+              <tbody>
+                {parts.map((part) => (
+                  <tr key={part.id} className="border-b border-rule-2">
+                    <th scope="row" className="py-2 pr-3 text-left font-normal">
+                      {part.pieces} {part.kind}
+                    </th>
+                    <td className="num pr-3">{part.stamps.join(' ')}</td>
+                    <td className="pr-3">
+                      {part.buildId !== null && (
+                        <a href={`/builds/${part.buildId}`}>
+                          B-{part.buildNumber} {part.engine}
+                        </a>
+                      )}
+                    </td>
+                    <td>{sayWhereabouts(part)}</td>
+                  </tr>
+                ))}
+              </tbody>
+            </table>
+          </Scroll>
+        </Sheet>
+        {can(actor, 'builds') && (
+          <Sheet title="A part with no build" note="Stock, or a loose part that belongs to no engine here.">
+            <Form
+              action={addPartAction}
+              requestKey={randomUUID()}
+              hidden={{ buildId: '' }}
+              className="grid gap-3"
+              label="Add a part"
+            >
+              <PartFields />
+              <Submit kind="ghost">Add the part</Submit>
+            </Form>
+          </Sheet>
+        )}
+      </div>
+    </main>
+  );
+}
