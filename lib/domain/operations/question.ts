@@ -47,7 +47,7 @@ export function questionColumn(boxes: readonly Box[], spread: string, unit: Leng
     if (magnitude(away) <= allowed) return [];
     const text = textOf(figure);
     const far = `${text} is ${printNear(magnitude(away), unit)} ${away > 0 ? 'more' : 'less'} than its neighbours`;
-    const meant = slips(text).find((slip) => near(slip, unit, middle, allowed));
+    const meant = nearest(slips(text), unit, middle, allowed);
     const step =
       away > 0 && SHELL_STEPS.some((shell) => magnitude(subtract(away, shell)) < lengthOf('.0012 in'));
     const words = step ? `${far}, about one undersize: were the standard shells still in?` : `${far}.`;
@@ -57,7 +57,7 @@ export function questionColumn(boxes: readonly Box[], spread: string, unit: Leng
 
 /** What a slip of the finger makes of a figure: the point moved, two figures swapped, one figure wrong. */
 function slips(text: string): string[] {
-  const match = /^(\D*)(\d*)[.,]?(\d*)(.*)$/.exec(text);
+  const match = /^([^\d.,]*)(\d*)[.,]?(\d*)(.*)$/.exec(text);
   if (!match) return [];
   const [, before = '', whole = '', places = '', after = ''] = match;
   const digits = whole + places;
@@ -68,12 +68,11 @@ function slips(text: string): string[] {
     { length: Math.max(0, digits.length - 1) },
     (_pair, i) => `${digits.slice(0, i)}${digits[i + 1] ?? ''}${digits[i] ?? ''}${digits.slice(i + 2)}`,
   ).flatMap((figures) => write(figures, point));
-  const wrong = Array.from(digits).flatMap((digit, i) =>
-    [-1, 1].flatMap((by) => {
-      const other = Number(digit) + by;
-      return other < 0 || other > 9
-        ? []
-        : write(`${digits.slice(0, i)}${other}${digits.slice(i + 1)}`, point);
+  // One figure misread or mistyped.
+  const wrong = [1, 2, 3, 4, 5, 6, 7, 8, 9].flatMap((by) =>
+    Array.from(digits).flatMap((digit, i) => {
+      const other = (Number(digit) + by) % 10;
+      return write(`${digits.slice(0, i)}${other}${digits.slice(i + 1)}`, point);
     }),
   );
   return [
@@ -85,9 +84,19 @@ function slips(text: string): string[] {
   ].filter((slip) => slip !== text);
 }
 
-function near(text: string, unit: LengthUnit, middle: Length, allowed: Length): boolean {
-  const parsed = parseLength(text, unit);
-  return parsed.ok && magnitude(subtract(parsed.value, middle)) <= allowed;
+/** Of the slips that land among the neighbours, the one nearest to their middle. */
+function nearest(
+  texts: readonly string[],
+  unit: LengthUnit,
+  middle: Length,
+  allowed: Length,
+): string | undefined {
+  const landed = texts.flatMap((text) => {
+    const parsed = parseLength(text, unit);
+    const away = parsed.ok ? magnitude(subtract(parsed.value, middle)) : null;
+    return away !== null && away <= allowed ? [{ text, away }] : [];
+  });
+  return landed.toSorted((a, b) => a.away - b.away)[0]?.text;
 }
 
 function inside(text: string, unit: LengthUnit, least: Length, most: Length): boolean {
