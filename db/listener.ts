@@ -1,10 +1,12 @@
 import 'server-only';
 import pg from 'pg';
 import { settings } from '@/lib/config/env';
+import { AppError } from '@/lib/errors';
 
 type Listener = () => void;
 
 interface Hub {
+  isLeaving: boolean;
   client: pg.Client | null;
   readonly listeners: Map<string, Set<Listener>>;
   readonly enders: Set<Listener>;
@@ -12,10 +14,16 @@ interface Hub {
 
 // One a process, also when the bundler loads this module twice.
 const store = globalThis as typeof globalThis & { wiretagFeed?: Hub };
-const hub: Hub = (store.wiretagFeed ??= { client: null, listeners: new Map(), enders: new Set() });
+const hub: Hub = (store.wiretagFeed ??= {
+  isLeaving: false,
+  client: null,
+  listeners: new Map(),
+  enders: new Set(),
+});
 
 /** Calls `heard` whenever something has happened in the shop, over one LISTEN connection for the whole process. */
 export async function listenTo(shopId: string, heard: Listener, ended: Listener): Promise<() => void> {
+  if (hub.isLeaving) throw new AppError('unavailable', 'This server is about to leave. Ask again.');
   const own = hub.listeners.get(shopId) ?? new Set<Listener>();
   own.add(heard);
   hub.listeners.set(shopId, own);
@@ -29,6 +37,7 @@ export async function listenTo(shopId: string, heard: Listener, ended: Listener)
 
 /** Ends every stream, so that the server can drain. */
 function endAllStreams(): void {
+  hub.isLeaving = true;
   for (const ended of [...hub.enders]) ended();
   void hub.client?.end();
   hub.client = null;

@@ -27,6 +27,8 @@ export async function GET(request: Request): Promise<Response> {
         'content-type': 'text/event-stream; charset=utf-8',
         'cache-control': 'no-store',
         'x-accel-buffering': 'no',
+        // The line closes with the stream, so that a leaving server need not wait for it.
+        connection: 'close',
       },
     });
   } catch (error) {
