@@ -1,16 +1,7 @@
 'use client';
 
-export default function Broken({ error, reset }: { error: Error & { digest?: string }; reset: () => void }) {
-  return (
-    <main className="mx-auto max-w-lg px-4 py-12">
-      <h1 className="mb-3">Something broke on our side</h1>
-      <p className="mb-4">
-        Nothing was changed. Try again; if it stays, tell us this number:{' '}
-        <span className="num">{error.digest ?? 'none'}</span>
-      </p>
-      <button type="button" className="btn" onClick={reset}>
-        Try again
-      </button>
-    </main>
-  );
+import { Broken, type BrokenProps } from '@/components/ui/broken';
+
+export default function BrokenPage(props: BrokenProps) {
+  return <Broken {...props} />;
 }

@@ -28,11 +28,13 @@ export interface DecisionView {
   readonly author: string;
 }
 
-/** Readings that stand (a corrected one is left out) and decisions on the work: one statement. */
-export async function loadReadings(
-  tx: Tx,
-  orderId: string,
-): Promise<{ readings: readonly ReadingView[]; decisions: readonly DecisionView[] }> {
+export interface OrderReadings {
+  readonly readings: readonly ReadingView[];
+  readonly decisions: readonly DecisionView[];
+}
+
+/** Readings that stand (a corrected one is left out) and decisions on the work: one statement. Undefined outside one's orders. */
+export async function loadReadings(tx: Tx, orderId: string): Promise<OrderReadings | undefined> {
   const { rows } = await tx.raw<{ rows: { readings: ReadingView[]; decisions: DecisionView[] }[] }>(
     `select coalesce((select json_agg(x) from (
          select r.id, r.line_id as "lineId", s.side, r.purpose, r.stage, r.round, r.rev, r.feature, r.position, r.typed_text as "typedText",
@@ -42,8 +44,9 @@ export async function loadReadings(
          where r.order_id = ? and not exists (select 1 from readings c where c.replaces_id = r.id)
          order by r.recorded_at, r.id) x), '[]') as readings,
        coalesce((select json_agg(json_build_object('lineId', line_id, 'round', round, 'decision', decision, 'reason', reason, 'author', author_name) order by round, at)
-         from line_decisions where order_id = ?), '[]') as decisions`,
-    [orderId, orderId],
+         from line_decisions where order_id = ?), '[]') as decisions
+     from order_sides mine where mine.order_id = ? and mine.shop_id = app_shop()`,
+    [orderId, orderId, orderId],
   );
-  return rows[0] ?? { readings: [], decisions: [] };
+  return rows[0];
 }

@@ -37,8 +37,8 @@ export default async function ReadingsPage(props: OrderPageProps) {
           line={line}
           view={view}
           actor={actor}
-          readings={more.readings}
-          decisions={more.decisions}
+          readings={more?.readings ?? []}
+          decisions={more?.decisions ?? []}
           isCut={isCut}
         />
       ))}

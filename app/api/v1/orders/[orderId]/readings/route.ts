@@ -1,6 +1,7 @@
 import { z } from 'zod';
 import { begin } from '@/db/client';
 import { loadReadings } from '@/db/read-models/order-readings';
+import { AppError } from '@/lib/errors';
 import { answerJson, route } from '@/lib/http/route';
 import { readingsSchema } from '@/lib/schemas/readings';
 import { postReadings } from '@/lib/services/readings';
@@ -10,8 +11,11 @@ const params = z.object({ orderId: z.uuid() });
 /** Readings of an order that stand. */
 export const GET = route({
   params,
-  handle: async ({ ticket, params: { orderId } }) =>
-    answerJson(await begin(ticket, (tx) => loadReadings(tx, orderId))),
+  handle: async ({ ticket, params: { orderId } }) => {
+    const readings = await begin(ticket, (tx) => loadReadings(tx, orderId));
+    if (!readings) throw new AppError('not_found', 'There is no such order.');
+    return answerJson(readings);
+  },
 });
 
 /** Keeps a batch of readings, each once by its own id. */
