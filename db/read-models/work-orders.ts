@@ -7,13 +7,14 @@ import type { Actor } from '@/lib/domain/actor';
 export interface WorkOrderFilter {
   readonly show: 'open' | 'all' | 'drafts' | 'ended';
   readonly find: string;
-  readonly before: number | null;
+  /** The last order of the page before: numbers run per sender, so its id comes along. */
+  readonly before: { readonly number: number; readonly orderId: string } | null;
 }
 
 export interface WorkOrderPage {
   readonly rows: readonly OrderStub[];
-  /** The number to go on from; null on the last page. */
-  readonly next: number | null;
+  /** Where to go on from; null on the last page. */
+  readonly next: WorkOrderFilter['before'];
 }
 
 const PAGE = 50;
@@ -38,13 +39,15 @@ export async function loadWorkOrders(tx: Tx, actor: Actor, filter: WorkOrderFilt
     values.push(actor.shopId, word, `${word}\u{10ffff}`);
   }
   if (filter.before !== null) {
-    conditions.push('s.number < ?');
-    values.push(filter.before);
+    conditions.push('(s.number, s.order_id) < (?, ?::uuid)');
+    values.push(filter.before.number, filter.before.orderId);
   }
   const { rows } = await tx.raw<{ rows: OrderStub[] }>(
-    `select ${STUB_COLUMNS} from order_sides s where ${conditions.join(' and ')} order by s.number desc, s.order_id limit ${PAGE + 1}`,
+    `select ${STUB_COLUMNS} from order_sides s where ${conditions.join(' and ')} order by s.number desc, s.order_id desc limit ${PAGE + 1}`,
     values,
   );
   const page = rows.slice(0, PAGE);
-  return { rows: page, next: rows.length > PAGE ? (page.at(-1)?.number ?? null) : null };
+  const last = page.at(-1);
+  const next = last && rows.length > PAGE ? { number: last.number, orderId: last.orderId } : null;
+  return { rows: page, next };
 }

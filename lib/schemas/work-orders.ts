@@ -6,5 +6,14 @@ const one = (value: unknown) => (Array.isArray(value) ? (value as unknown[])[0] 
 export const workOrderFilterSchema = z.object({
   show: z.preprocess(one, z.enum(['open', 'drafts', 'ended', 'all']).catch('open')),
   find: z.preprocess(one, z.string().trim().max(80).catch('')),
-  before: z.preprocess(one, z.coerce.number().int().positive().nullable().catch(null)),
+  before: z.preprocess(
+    one,
+    z
+      .string()
+      .regex(/^\d{1,9}\.[0-9a-f-]{36}$/)
+      .transform((text) => ({ number: Number(text.split('.')[0]), orderId: text.split('.')[1] ?? '' }))
+      .pipe(z.object({ number: z.number(), orderId: z.uuid() }))
+      .nullable()
+      .catch(null),
+  ),
 });

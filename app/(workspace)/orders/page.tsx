@@ -79,7 +79,7 @@ export default async function WorkOrdersPage({
         </ul>
       )}
       {page.next !== null && (
-        <a href={link({ before: String(page.next) })} className="btn btn-ghost">
+        <a href={link({ before: `${page.next.number}.${page.next.orderId}` })} className="btn btn-ghost">
           Older orders
         </a>
       )}
