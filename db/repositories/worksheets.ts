@@ -1,5 +1,6 @@
 import 'server-only';
 import type { Tx } from '@/db/client';
+import type { Actor } from '@/lib/domain/actor';
 import type { Made } from '@/lib/domain/builds/made';
 
 /** A worksheet as it is kept: what was typed, sound or not. */
@@ -48,7 +49,8 @@ export async function saveWorksheet(
   return changed === 1 ? version + 1 : undefined;
 }
 
-/** Lends the sheet to the partner to fill in, or takes it back. */
-export async function shareWorksheet(tx: Tx, id: string, shared: boolean): Promise<void> {
-  await tx('worksheets').where({ id }).update({ shared });
+/** Lends one's own sheet to the partner to fill in, or takes it back; false when it is not the asker's. */
+export async function shareWorksheet(tx: Tx, actor: Actor, id: string, shared: boolean): Promise<boolean> {
+  const changed = await tx('worksheets').where({ id, shop_id: actor.shopId }).update({ shared });
+  return changed === 1;
 }

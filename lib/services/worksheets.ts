@@ -49,9 +49,8 @@ export async function keepWorksheet(
 export async function lendWorksheet(ticket: Ticket, id: string, shared: boolean): Promise<void> {
   await begin(ticket, async (tx, actor) => {
     requirePermission(actor, 'sizes');
-    const sheet = await findWorksheet(tx, id);
-    if (!sheet) throw new AppError('not_found', 'There is no such sheet.');
-    await shareWorksheet(tx, id, shared);
+    if (!(await shareWorksheet(tx, actor, id, shared)))
+      throw new AppError('not_found', 'There is no such sheet.');
   });
 }
 

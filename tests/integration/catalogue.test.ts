@@ -31,6 +31,10 @@ const DEFINERS = [
     'follow_move',
     'forget_draft',
     'guard_cutting',
+    'guard_leg',
+    'guard_line_start',
+    'guard_quote',
+    'line_not_clear',
   ],
   ...[
     'guard_event',
