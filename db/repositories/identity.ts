@@ -126,3 +126,11 @@ export async function beginReset(
 export async function takeReset(tx: Tx, tokenHash: string, passwordHash: string): Promise<boolean> {
   return truth(tx, '(take_reset(?, ?) is not null)', [tokenHash, passwordHash]);
 }
+
+/** Each claimed shop with an owner of it. */
+export async function listOwners(tx: Tx): Promise<{ shopId: string; personId: string }[]> {
+  const { rows } = await tx.raw<{ rows: { shopId: string; personId: string }[] }>(
+    'select shop_id as "shopId", person_id as "personId" from shops_to_check()',
+  );
+  return rows;
+}

@@ -4,6 +4,8 @@ import type { Actor } from '@/lib/domain/actor';
 import type { OrderSet } from '@/lib/domain/orders/changes';
 import type { OrderEvent } from '@/lib/domain/orders/deed';
 import type { Facts, Side } from '@/lib/domain/orders/facts';
+import type { Did } from '@/lib/domain/orders/fold';
+import { nextLeg } from '@/lib/domain/orders/legs';
 import type { Stand } from '@/lib/domain/orders/stand';
 
 interface Logged {
@@ -13,11 +15,12 @@ interface Logged {
   readonly now: string;
 }
 
-/** Adds events to the order's log, numbered on from `after`. Answers the row id of the first. */
+/** Adds events to the order's log, numbered on; what was done goes with the first. Answers the row id of the first. */
 export async function writeEvents(
   { tx, actor, side, now }: Logged,
   order: { readonly id: string; readonly logSeq: number },
   events: readonly OrderEvent[],
+  did: Did = {},
 ): Promise<number> {
   const rows = await tx('events').insert(
     events.map(({ type, payload }, index) => ({
@@ -27,6 +30,7 @@ export async function writeEvents(
         seq: order.logSeq + 1 + index,
         type,
         payload: JSON.stringify(payload),
+        did: JSON.stringify(index === 0 ? did : {}),
       },
       ...{ person_id: actor.personId, author_name: actor.personName, side, occurred_at: now },
     })),
@@ -70,26 +74,18 @@ export async function turnClock(
   facts: Facts,
   stand: Stand,
 ): Promise<void> {
-  if (stand.clock === before.clock && facts.round === before.round) return;
+  const leg = nextLeg(before, facts, stand);
+  if (leg === undefined) return;
   await tx.raw(
     `with ended as (update clock_legs set ended_at = ? where order_id = ? and ended_at is null returning 1)
      insert into clock_legs (order_id, n, round, booked_to, calendar_shop_id, started_at, started_seq)
      select ?, 1 + coalesce((select max(n) from clock_legs where order_id = ?), 0), ?, ?, ?, ?, ?
-     from (select count(*) from ended) as one where ? <> 'none'`,
+     from (select count(*) from ended) as one where ?`,
     [
-      ...[now, before.id, before.id, before.id, facts.round, stand.clock === 'none' ? 'sender' : stand.clock],
-      ...[calendarShop(facts, stand), now, before.logSeq + 1, stand.clock],
+      ...[now, before.id, before.id, before.id, facts.round, leg?.bookedTo ?? 'sender'],
+      ...[leg?.calendarShopId ?? facts.sender.shopId, now, before.logSeq + 1, leg !== null],
     ],
   );
-}
-
-/** A leg's hours are working hours of the side named, of the receiver on the road, of who must answer a snag. */
-function calendarShop(facts: Facts, stand: Stand): string {
-  const partner = facts.partner?.shopId ?? facts.sender.shopId;
-  if (stand.clock === 'partner') return partner;
-  if (stand.clock === 'road') return stand.partnerStep !== null ? partner : facts.sender.shopId;
-  if (stand.clock === 'snag') return stand.partnerStep !== null ? partner : facts.sender.shopId;
-  return facts.sender.shopId;
 }
 
 function columnsOf(set: OrderSet): Record<string, unknown> {

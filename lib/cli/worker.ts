@@ -1,6 +1,7 @@
 import { run, type TaskList } from 'graphile-worker';
 import { closeDatabase } from '@/db/client';
 import { settings } from '@/lib/config/env';
+import { checkAllLogs } from '@/lib/jobs/check-logs';
 import { expireQuote } from '@/lib/jobs/expire-quote';
 import { sendNotice } from '@/lib/jobs/send-notice';
 
@@ -8,6 +9,7 @@ import { sendNotice } from '@/lib/jobs/send-notice';
 const taskList: TaskList = {
   send_notice: (payload) => sendNotice((payload as { noticeId: string }).noticeId),
   expire_quote: (payload) => expireQuote(payload as { orderId: string; revision: number; shopId: string }),
+  check_logs: () => checkAllLogs(),
 };
 
 const { JOBS_DATABASE_URL } = settings();
@@ -18,6 +20,7 @@ const runner = await run({
   noHandleSignals: true,
   pollInterval: 1000,
   taskList,
+  crontab: '17 3 * * * check_logs',
 });
 console.log('worker ready');
 

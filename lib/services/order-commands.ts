@@ -14,6 +14,7 @@ import { type Calendar, dayAt, workingDayAfter } from '@/lib/domain/calendar/cal
 import type { Command } from '@/lib/domain/orders/commands';
 import { decide, type Decision } from '@/lib/domain/orders/decide';
 import type { Facts, Side } from '@/lib/domain/orders/facts';
+import { didOf } from '@/lib/domain/orders/fold';
 import { ORDER_RULES } from '@/lib/domain/orders/rules';
 import { AppError, type ErrorCode } from '@/lib/errors';
 
@@ -144,7 +145,8 @@ async function write(tx: Tx, doing: Doing, decision: Decision): Promise<void> {
     set,
     events: decision.events.length,
   });
-  await writeEvents(logged, facts, decision.events);
+  const did = didOf(doing.command.do === 'send' ? facts : undefined, decision.changes);
+  await writeEvents(logged, facts, decision.events, did);
   await turnClock(logged, facts, decision.facts, decision.stand);
   await tell(tx, doing, decision);
 }

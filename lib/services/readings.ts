@@ -42,7 +42,10 @@ export async function postReadings(
         side: isSender ? ('sender' as const) : ('partner' as const),
         now: now().toISOString(),
       };
-      await writeEvents(logged, { id: orderId, logSeq: facts.logSeq }, [event]);
+      const read = rows
+        .filter((row) => row.purpose === 'cut')
+        .map(({ lineId, round, feature, position }) => ({ lineId, round, place: `${feature}|${position}` }));
+      await writeEvents(logged, { id: orderId, logSeq: facts.logSeq }, [event], { read });
     }
     return { kept };
   });

@@ -55,6 +55,7 @@ const DEFINERS = [
     'reader_of',
     'shift_pieces',
     'shops_of_asker',
+    'shops_to_check',
     'sign_up_shop',
   ],
   ...[

@@ -1,9 +1,11 @@
 import { randomUUID } from 'node:crypto';
 import { beforeAll, describe, expect, it } from 'vitest';
 import { runOrderCommand } from '@/lib/services/order-commands';
+import { checkLogs } from '@/lib/services/log-check';
 import { readAsSuperuser, ownDatabase } from '../support/database';
 import {
   buildDraft,
+  fullOrder,
   handOver,
   keyBack,
   makeClear,
@@ -135,6 +137,32 @@ describe('a whole work order', () => {
       [order.partner.shopId],
     );
     expect(feed.map(({ seq }) => seq)).toEqual(feed.map((_row, index) => index + 1));
+  });
+});
+
+describe('the log alone', () => {
+  it('rebuilds status, punches, whose move, clock and legs of every order, and a row changed by hand is found', async () => {
+    const shops = await buildDraft();
+    await makeClear(shops);
+    const whole = await fullOrder(shops);
+    const ended = await buildDraft(undefined, shops);
+    await ended.act('sender', { do: 'send' });
+    await ended.act('partner', { do: 'decline', reason: 'no room' });
+    const stopped = await buildDraft(undefined, shops);
+    await makeClear(stopped);
+    const rods = stopped.lineIds[1] ?? '';
+    await stopped.act('partner', { do: 'start', lineId: rods });
+    const lines = [rodSizes(rods, '1.8847', '1.8842')];
+    await stopped.act('sender', { do: 'release', lines, reason: 'measured again' });
+    expect(await checkLogs(shops.sender.owner)).toEqual({ checked: 4, differences: [] });
+    expect(await checkLogs(shops.partner.owner)).toEqual({ checked: 0, differences: [] });
+    await readAsSuperuser(database.superuserUrl(), `update orders set clock = 'road' where id = $1`, [
+      whole.id,
+    ]);
+    expect(await checkLogs(shops.sender.owner)).toEqual({
+      checked: 4,
+      differences: [{ orderId: whole.id, about: ['clock'] }],
+    });
   });
 });
 

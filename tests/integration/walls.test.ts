@@ -1,13 +1,18 @@
 import { randomUUID } from 'node:crypto';
 import { beforeAll, describe, expect, it } from 'vitest';
 import { begin, type Tx } from '@/db/client';
-import { postReadings } from '@/lib/services/readings';
-import { writeMessage } from '@/lib/services/messages';
 import { lendWorksheet } from '@/lib/services/worksheets';
 import { ownDatabase, readAsSuperuser } from '../support/database';
-import { buildDraft, handOver, makeClear, price, rodSizes, type TestOrder } from '../support/orders';
+import {
+  buildDraft,
+  fullOrder,
+  handOver,
+  makeClear,
+  price,
+  rodSizes,
+  type TestOrder,
+} from '../support/orders';
 import { buildPartner } from '../support/shops';
-import { inches } from '../support/worksheet';
 
 const own = ownDatabase();
 const read = <T>(sql: string, values: readonly unknown[] = []) =>
@@ -30,42 +35,6 @@ const AUTHORED: readonly (readonly [table: string, by: Side, fresh: Row])[] = [
   ['line_decisions', 'sender', { round: 2 }],
   ['messages', 'partner', { id: randomUUID() }],
 ];
-
-/** An order with a row in each of the tables above. */
-async function fullOrder(): Promise<TestOrder> {
-  const order = await buildDraft();
-  const [crack = '', rods = ''] = order.lineIds;
-  await makeClear(order);
-  const snagId = randomUUID();
-  await order.act('partner', {
-    ...{ do: 'raise_snag', id: snagId, lineId: rods, kind: 'crack', words: 'a check by the fillet' },
-    ...{ proposal: 'grind it out', priceMinor: 0, days: 0 },
-  });
-  await order.act('sender', { do: 'approve_snag', snagId, words: 'go on', newSizes: false });
-  const holdId = randomUUID();
-  await order.act('sender', {
-    ...{ do: 'hold', id: holdId, lineId: null, reason: 'other', words: 'wait', waitsFor: 'sender' },
-  });
-  await order.act('sender', { do: 'lift_hold', holdId });
-  await order.act('partner', { do: 'start', lineId: crack });
-  await order.act('partner', { do: 'start', lineId: rods });
-  await postReadings(order.partner.owner, order.id, [
-    {
-      ...{ id: randomUUID(), lineId: rods, feature: '1', position: 'A', stage: 'finished', unit: 'in' },
-      ...{ typedText: '1.8848', comparator: null, size: inches('1.8848'), instrument: '' },
-      ...{ takenAt: new Date().toISOString(), replacesId: null },
-    },
-  ]);
-  await writeMessage(order.partner.owner, order.id, { id: randomUUID(), kind: 'message', body: 'on it' });
-  await order.act('partner', { do: 'report', unread: [{ lineId: rods, reason: 'on paper' }] });
-  await order.act('partner', handOver('sent_back', order.partId));
-  await order.act('sender', handOver('received', order.partId));
-  await order.act('sender', {
-    do: 'decide',
-    decisions: order.lineIds.map((lineId) => ({ lineId, decision: 'accept', reason: '', features: [] })),
-  });
-  return order;
-}
 
 function insert(tx: Tx, table: string, row: Row): Promise<unknown> {
   const prepared = Object.fromEntries(

@@ -4,8 +4,10 @@ import { CATALOGUE_VERSION } from '@/lib/domain/operations/catalogue';
 import type { Command, ReleasedLine } from '@/lib/domain/orders/commands';
 import { findPreset } from '@/lib/domain/builds/presets';
 import { addPart, createBuild } from '@/lib/services/builds';
+import { writeMessage } from '@/lib/services/messages';
 import { runOrderCommand, type OrderCommandAnswer } from '@/lib/services/order-commands';
 import { createDraft } from '@/lib/services/order-drafts';
+import { postReadings } from '@/lib/services/readings';
 import { buildPartner, buildShop, type TestShop } from './shops';
 import { inches } from './worksheet';
 
@@ -155,4 +157,40 @@ export async function makeClear(order: TestOrder): Promise<void> {
   await order.act('partner', handOver('checked_in', order.partId));
   await order.act('sender', { do: 'release', lines: [rodSizes(rods)], reason: '' });
   await order.act('partner', keyBack(rods, 1));
+}
+
+/** A finished order with a snag, a hold, a reading, a message and a decision: a row in every table of an order. */
+export async function fullOrder(shops?: { sender: TestShop; partner: TestShop }): Promise<TestOrder> {
+  const order = await buildDraft(undefined, shops);
+  const [crack = '', rods = ''] = order.lineIds;
+  await makeClear(order);
+  const snagId = randomUUID();
+  await order.act('partner', {
+    ...{ do: 'raise_snag', id: snagId, lineId: rods, kind: 'crack', words: 'a check by the fillet' },
+    ...{ proposal: 'grind it out', priceMinor: 0, days: 0 },
+  });
+  await order.act('sender', { do: 'approve_snag', snagId, words: 'go on', newSizes: false });
+  const holdId = randomUUID();
+  await order.act('sender', {
+    ...{ do: 'hold', id: holdId, lineId: null, reason: 'other', words: 'wait', waitsFor: 'sender' },
+  });
+  await order.act('sender', { do: 'lift_hold', holdId });
+  await order.act('partner', { do: 'start', lineId: crack });
+  await order.act('partner', { do: 'start', lineId: rods });
+  await postReadings(order.partner.owner, order.id, [
+    {
+      ...{ id: randomUUID(), lineId: rods, feature: '1', position: 'A', stage: 'finished', unit: 'in' },
+      ...{ typedText: '1.8848', comparator: null, size: inches('1.8848'), instrument: '' },
+      ...{ takenAt: new Date().toISOString(), replacesId: null },
+    },
+  ]);
+  await writeMessage(order.partner.owner, order.id, { id: randomUUID(), kind: 'message', body: 'on it' });
+  await order.act('partner', { do: 'report', unread: [{ lineId: rods, reason: 'on paper' }] });
+  await order.act('partner', handOver('sent_back', order.partId));
+  await order.act('sender', handOver('received', order.partId));
+  await order.act('sender', {
+    do: 'decide',
+    decisions: order.lineIds.map((lineId) => ({ lineId, decision: 'accept', reason: '', features: [] })),
+  });
+  return order;
 }

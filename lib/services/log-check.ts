@@ -1,0 +1,78 @@
+import 'server-only';
+import { begin } from '@/db/client';
+import { loadLogged, type LoggedOrder } from '@/db/read-models/order-log';
+import type { Ticket } from '@/lib/domain/actor';
+import { fold } from '@/lib/domain/orders/fold';
+
+/** What tables and log disagree about on one order. */
+export interface LogDifference {
+  readonly orderId: string;
+  readonly about: readonly string[];
+}
+
+/**
+ * Rebuilds a shop's orders from their logs and compares them with the tables. Answers the differences, and how many
+ * orders were looked at.
+ */
+export async function checkLogs(
+  ticket: Ticket,
+  most = Number.POSITIVE_INFINITY,
+): Promise<{ checked: number; differences: LogDifference[] }> {
+  const differences: LogDifference[] = [];
+  let [checked, after] = [0, '00000000-0000-0000-0000-000000000000'];
+  for (;;) {
+    const limit = Math.min(200, most - checked);
+    const from = after;
+    const page =
+      limit <= 0 ? [] : await begin(ticket, (tx, actor) => loadLogged(tx, actor, { after: from, limit }));
+    for (const order of page) {
+      const about = differencesOf(order);
+      if (about.length > 0) differences.push({ orderId: order.orderId, about });
+    }
+    const last = page.at(-1);
+    if (!last) return { checked, differences };
+    checked += page.length;
+    after = last.orderId;
+  }
+}
+
+function differencesOf({ says, log }: LoggedOrder): string[] {
+  const folded = fold(log);
+  if (!folded) return ['the beginning of the log'];
+  const { facts, stand } = folded;
+  const told: Record<string, unknown> = {
+    ...{ status: facts.status, round: facts.round, latestRev: facts.latestRev, promisedOn: facts.promisedOn },
+    ...{ punches: stand.punches, stopped: stand.stopped, clear: stand.clear, clock: stand.clock },
+    ...{ senderStep: stand.senderStep, partnerStep: stand.partnerStep },
+    legs: folded.legs.map((leg) => ({
+      ...leg,
+      startedAt: instant(leg.startedAt),
+      endedAt: instant(leg.endedAt),
+    })),
+  };
+  const kept: Record<string, unknown> = {
+    ...says,
+    legs: says.legs.map((leg) => ({
+      ...leg,
+      startedAt: instant(leg.startedAt),
+      endedAt: instant(leg.endedAt),
+    })),
+  };
+  return Object.keys(told).filter((name) => !isEqual(told[name], kept[name]));
+}
+
+function instant(at: string | null): number | null {
+  return at === null ? null : new Date(at).getTime();
+}
+
+/** Equal as JSON whatever the order of names. */
+function isEqual(one: unknown, other: unknown): boolean {
+  return JSON.stringify(sorted(one)) === JSON.stringify(sorted(other));
+}
+
+function sorted(value: unknown): unknown {
+  if (Array.isArray(value)) return value.map(sorted);
+  if (typeof value !== 'object' || value === null) return value;
+  const entries = Object.entries(value).toSorted(([a], [b]) => (a < b ? -1 : 1));
+  return Object.fromEntries(entries.map(([name, inner]) => [name, sorted(inner)]));
+}
