@@ -54,19 +54,32 @@ export async function beginUnknown<T>(work: (tx: Tx) => Promise<T>): Promise<T> 
 
 async function open<T>(work: (tx: Tx) => Promise<T>): Promise<T> {
   try {
-    return await database().transaction(work);
+    return await openOnce(work);
   } catch (error) {
-    if (isOutage(error)) {
-      throw new AppError(
-        'unavailable',
-        'The records cannot be reached at the moment. Nothing was changed. Try again.',
-      );
-    }
-    throw error;
+    if (!isOutage(error)) throw error;
+    throw new AppError(
+      'unavailable',
+      'The records cannot be reached at the moment. Nothing was changed. Try again.',
+    );
   }
 }
 
-interface AskerRow {
+/** A line that died while it lay in the pool is found out at BEGIN, when nothing has been done yet: then another is taken, once. */
+async function openOnce<T>(work: (tx: Tx) => Promise<T>, mayTryAgain = true): Promise<T> {
+  const begun: Tx[] = [];
+  try {
+    return await database().transaction((tx) => {
+      begun.push(tx);
+      return work(tx);
+    });
+  } catch (error) {
+    if (begun.length > 0 || !mayTryAgain || !isOutage(error)) throw error;
+    return openOnce(work, false);
+  }
+}
+
+/** A row of who is asking, as the database answers it. */
+export interface AskerRow {
   person_id: string | null;
   person_name: string;
   shop_id: string;
@@ -85,7 +98,11 @@ async function findActor(tx: Tx, ticket: Ticket): Promise<Actor | undefined> {
           ticket.shopId,
           ticket.personId,
         ]);
-  const row = rows[0];
+  return toActor(rows[0]);
+}
+
+/** Who is asking, or nobody. */
+export function toActor(row: AskerRow | undefined): Actor | undefined {
   if (!row?.person_id) return undefined;
   return {
     personId: row.person_id,

@@ -3,7 +3,6 @@ import type { ReactNode } from 'react';
 import { signOutAction } from '@/app/(public)/sign-in/actions';
 import { changePersonAction, switchShiftAction, switchShopAction } from '@/app/(workspace)/who/actions';
 import { Rail } from '@/components/shell/rail';
-import { begin } from '@/db/client';
 import { loadShell } from '@/db/read-models/shell';
 import { requirePageTicket } from '@/lib/auth/ticket';
 import { can } from '@/lib/domain/actor';
@@ -11,7 +10,7 @@ import { AppError } from '@/lib/errors';
 
 export default async function WorkspaceLayout({ children }: { children: ReactNode }) {
   const ticket = await requirePageTicket();
-  const shell = await begin(ticket, loadShell).catch((error: unknown) => {
+  const shell = await loadShell(ticket).catch((error: unknown) => {
     if (error instanceof AppError && error.code === 'unauthenticated') redirect('/sign-in');
     throw error;
   });

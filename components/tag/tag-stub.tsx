@@ -11,6 +11,8 @@ export interface TagStubProps {
   punches: PunchesValue;
   stopped: boolean;
   hot: boolean;
+  /** Messages that the reader has not seen. */
+  unread: number;
 }
 
 /** An order as a stub of its tag, in a list. Warm when it is the reader's move. */
@@ -25,6 +27,7 @@ export function TagStub({
   punches,
   stopped,
   hot,
+  unread,
 }: TagStubProps) {
   const face = hot ? 'bg-manila-2 border-manila-edge' : 'bg-paper border-rule';
   return (
@@ -39,6 +42,11 @@ export function TagStub({
         <span className="max-sm:col-span-3 max-sm:pl-5">
           <b className="block font-semibold">{verb}</b>
           <span className="note">{sub}</span>
+          {unread > 0 && (
+            <span className="block text-[14px] font-semibold text-blue">
+              {unread} {unread === 1 ? 'new message' : 'new messages'}
+            </span>
+          )}
         </span>
         <span className="max-sm:col-start-3 max-sm:row-start-1">
           <SmallPunches punches={punches} stopped={stopped} />

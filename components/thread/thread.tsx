@@ -13,11 +13,14 @@ interface Entry {
   readonly side: Side;
   readonly at: Date;
   readonly body: string | null;
+  readonly isOwn: boolean;
   readonly files: readonly { readonly id: string; readonly name: string; readonly isPicture: boolean }[];
 }
 
 interface ThreadProps {
   entries: readonly (Entry & { quietNote?: string | undefined })[];
+  /** How far the reader has read. */
+  seenSeq: number;
   side: Side;
   unit: LengthUnit;
   timeZone: string;
@@ -25,10 +28,14 @@ interface ThreadProps {
 }
 
 /** Messages, with the order's events between them. Ours stand on blue, theirs on brass. */
-export function Thread({ entries, side, unit, timeZone, children }: ThreadProps) {
+export function Thread({ entries, seenSeq, side, unit, timeZone, children }: ThreadProps) {
+  const fresh = entries.filter((entry) => entry.body !== null && !entry.isOwn && entry.seq > seenSeq);
   return (
     <section className="sheet" aria-label="Messages" id="messages">
-      <h2 className="px-4 pt-4 pb-3 text-[17px]">Messages</h2>
+      <h2 className="px-4 pt-4 pb-3 text-[17px]">
+        Messages
+        {fresh.length > 0 && <span className="note font-normal"> {fresh.length} new</span>}
+      </h2>
       {/* Turned round, so that the latest is in view without a script. */}
       <div
         className="flex max-h-[34rem] flex-col-reverse overflow-y-auto border-t border-rule-2"
@@ -55,6 +62,7 @@ export function Thread({ entries, side, unit, timeZone, children }: ThreadProps)
                   <span>
                     {entry.shopName}, {entry.author}
                     {entry.type === 'order.we_spoke' ? ' · we spoke' : ''}
+                    {fresh.includes(entry) && <b className="font-semibold text-blue"> · new</b>}
                   </span>
                   <span>{sayMoment(entry.at, timeZone)}</span>
                 </p>

@@ -49,16 +49,21 @@ export interface BuildView {
   }[];
 }
 
-/** The shop's builds, newest first. */
-export async function loadBuilds(tx: Tx, actor: Actor): Promise<BuildListRow[]> {
+/** The shop's builds, newest first, a page at a time; `next` is the number to go on below. */
+export async function loadBuilds(
+  tx: Tx,
+  actor: Actor,
+  page: { readonly limit: number; readonly below: number | null },
+): Promise<{ rows: BuildListRow[]; next: number | null }> {
   const { rows } = await tx.raw<{ rows: BuildListRow[] }>(
     `select b.id, b.number, b.engine, b.customer_name as "customerName", b.needed_on::text as "neededOn",
        (select count(*)::int from parts p where p.build_id = b.id) as parts,
        (select count(*)::int from orders o where o.build_id = b.id and o.ended_at is null) as "openOrders"
-     from builds b where b.shop_id = ? and b.archived_at is null order by b.number desc limit 200`,
-    [actor.shopId],
+     from builds b where b.shop_id = ? and b.archived_at is null and b.number < ? order by b.number desc limit ?`,
+    [actor.shopId, page.below ?? 2_147_483_647, page.limit + 1],
   );
-  return rows;
+  const shown = rows.slice(0, page.limit);
+  return { rows: shown, next: rows.length > page.limit ? (shown.at(-1)?.number ?? null) : null };
 }
 
 const PART = `p.id, p.kind, p.maker_no as "makerNo", p.stamps, p.pieces, p.condition, p.build_id as "buildId",
@@ -72,24 +77,31 @@ export async function loadBuild(tx: Tx, actor: Actor, buildId: string): Promise<
     `select b.id, b.number, b.engine, b.made, b.customer_name as "customerName", b.notes, b.needed_on::text as "neededOn", b.version,
        coalesce((select json_agg(x) from (select ${PART.replace(' as where', ' as "where"')} from parts p where p.build_id = b.id order by p.kind, p.id) x), '[]') as parts,
        coalesce((select json_agg(x) from (select s.order_id as "orderId", s.number, s.title, s.status, s.step, s.their_step as "theirStep"
-         from orders o join order_sides s on s.order_id = o.id and s.shop_id = b.shop_id where o.build_id = b.id order by s.number desc) x), '[]') as orders
+         from orders o join order_sides s on s.order_id = o.id and s.shop_id = b.shop_id where o.build_id = b.id order by s.number desc limit 100) x), '[]') as orders
      from builds b where b.id = ? and b.shop_id = ?`,
     [buildId, actor.shopId],
   );
   return rows[0];
 }
 
-/** Parts of the shop that an order can be made for, with their builds. */
+/** A part in the list of all, with its build. */
+export interface PartRow extends PartView {
+  readonly engine: string | null;
+  readonly buildNumber: number | null;
+}
+
+/** Parts of the shop with their builds, the newest first, a page at a time; `next` is where to go on from. */
 export async function loadParts(
   tx: Tx,
   actor: Actor,
-): Promise<(PartView & { engine: string | null; buildNumber: number | null })[]> {
-  const { rows } = await tx.raw<{
-    rows: (PartView & { engine: string | null; buildNumber: number | null })[];
-  }>(
+  page: { readonly limit: number; readonly after: string | null },
+): Promise<{ rows: PartRow[]; next: string | null }> {
+  const { rows } = await tx.raw<{ rows: PartRow[] }>(
     `select ${PART.replace(' as where', ' as "where"')}, b.engine, b.number as "buildNumber" from parts p left join builds b on b.id = p.build_id
-     where p.shop_id = ? order by b.number desc nulls last, p.kind, p.id limit 500`,
-    [actor.shopId],
+     where p.shop_id = ? and (p.created_at, p.id) < (coalesce((select a.created_at from parts a where a.id = ?), 'infinity'), coalesce(?::uuid, 'ffffffff-ffff-ffff-ffff-ffffffffffff'))
+     order by p.created_at desc, p.id desc limit ?`,
+    [actor.shopId, page.after, page.after, page.limit + 1],
   );
-  return rows;
+  const shown = rows.slice(0, page.limit);
+  return { rows: shown, next: rows.length > page.limit ? (shown.at(-1)?.id ?? null) : null };
 }

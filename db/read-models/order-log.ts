@@ -30,11 +30,11 @@ export interface LoggedOrder {
   readonly log: readonly LogEntry[];
 }
 
-/** Orders that the asker's shop sent, after an id, for holding tables and log against each other. */
+/** Orders that the asker's shop sent, after an id, every nth by number, for holding tables and log against each other. */
 export async function loadLogged(
   tx: Tx,
   actor: Actor,
-  page: { readonly after: string; readonly limit: number },
+  page: { readonly after: string; readonly limit: number; readonly every: number },
 ): Promise<LoggedOrder[]> {
   const { rows } = await tx.raw<{ rows: LoggedOrder[] }>(
     `select o.id as "orderId", json_build_object('status', o.status, 'round', o.round, 'latestRev', o.latest_rev, 'promisedOn', o.promised_on,
@@ -43,8 +43,8 @@ export async function loadLogged(
        'legs', coalesce((select json_agg(json_build_object('bookedTo', g.booked_to, 'calendarShopId', g.calendar_shop_id, 'round', g.round,
          'startedSeq', g.started_seq, 'startedAt', g.started_at, 'endedAt', g.ended_at) order by g.n) from clock_legs g where g.order_id = o.id), '[]'::json)) as says,
        (select json_agg(json_build_object('seq', e.seq, 'at', e.occurred_at, 'did', e.did) order by e.seq) from events e where e.order_id = o.id) as log
-     from orders o where o.sender_shop_id = ? and o.status <> 'draft' and o.id > ? order by o.id limit ?`,
-    [actor.shopId, page.after, page.limit],
+     from orders o where o.sender_shop_id = ? and o.status <> 'draft' and o.id > ? and o.number % ? = 0 order by o.id limit ?`,
+    [actor.shopId, page.after, page.every, page.limit],
   );
   return rows;
 }

@@ -26,6 +26,8 @@ export interface OrderView {
   readonly reference: string;
   readonly agreedMinor: number | null;
   readonly revAt: Date | null;
+  /** How far the asker has read the thread. */
+  readonly seenSeq: number;
   readonly thread: readonly ThreadEntry[];
 }
 
@@ -39,22 +41,21 @@ export interface ThreadEntry {
   readonly side: Side;
   readonly at: Date;
   readonly body: string | null;
+  /** Written by the asker, on whatever screen. */
+  readonly isOwn: boolean;
   readonly files: readonly { readonly id: string; readonly name: string; readonly isPicture: boolean }[];
 }
 
-interface HeadRow {
-  title: string;
-  made: Made | null;
-  engine: string;
-  buildNumber: number | null;
-  notes: string;
-  standingInstruction: string;
-  transport: 'delivered' | 'fetched';
-  reference: string;
+interface HeadRow extends Pick<
+  OrderView,
+  'title' | 'made' | 'engine' | 'buildNumber' | 'notes' | 'standingInstruction' | 'transport' | 'reference'
+> {
   revAt: Date | null;
+  seenSeq: number;
+  thread: (Omit<ThreadEntry, 'at'> & { at: string })[];
 }
 
-/** Loads an order for its page: three statements. Undefined outside the asker's orders. */
+/** Loads an order for its page: two statements. Undefined outside the asker's orders. */
 export async function loadOrder(tx: Tx, actor: Actor, orderId: string): Promise<OrderView | undefined> {
   const facts = await findFacts(tx, orderId);
   if (!facts) return undefined;
@@ -64,31 +65,28 @@ export async function loadOrder(tx: Tx, actor: Actor, orderId: string): Promise<
        (select p.made from order_parts p where p.order_id = o.id and p.made is not null limit 1) as made,
        (select b.number from builds b where b.id = o.build_id) as "buildNumber",
        coalesce((select r.text from order_references r where r.order_id = o.id and r.shop_id = ?), '') as reference,
-       (select v.released_at from revs v where v.order_id = o.id and v.number = o.latest_rev) as "revAt"
+       (select v.released_at from revs v where v.order_id = o.id and v.number = o.latest_rev) as "revAt",
+       coalesce((select r.seen_seq from thread_reads r where r.order_id = o.id and r.person_id = ?), 0) as "seenSeq",
+       coalesce((select json_agg(x order by x.seq) from (${THREAD}) x), '[]') as thread
      from orders o where o.id = ?`,
-    [actor.shopId, orderId],
+    [actor.shopId, actor.personId, orderId],
   );
   const head = rows[0];
   if (!head) return undefined;
   const side: Side = facts.sender.shopId === actor.shopId ? 'sender' : 'partner';
+  const thread = head.thread.map((entry) => ({ ...entry, at: new Date(entry.at) }));
   return {
     ...head,
-    ...{ facts, side, stand: stand(facts), allowed: allowedCommands(facts, { actor, side }) },
+    ...{ facts, side, thread, stand: stand(facts), allowed: allowedCommands(facts, { actor, side }) },
     agreedMinor:
       facts.quotes.find((quote) => quote.kind === 'work' && quote.state === 'agree')?.totalMinor ?? null,
-    thread: await loadThread(tx, orderId),
   };
 }
 
-/** The thread and log of an order, oldest first. */
-export async function loadThread(tx: Tx, orderId: string): Promise<ThreadEntry[]> {
-  const { rows } = await tx.raw<{ rows: ThreadEntry[] }>(
-    `select * from (select e.seq, e.type, e.payload, e.author_name as author, s.name as "shopName", e.side, e.occurred_at as at, m.body,
-         coalesce((select json_agg(json_build_object('id', a.id, 'name', a.name, 'isPicture', a.thumb_key is not null) order by a.at)
-           from attachments a where a.order_id = e.order_id and (a.message_id = m.id or a.move_id::text = e.payload ->> 'moveId')), '[]') as files
-       from events e join shops s on s.id = e.shop_id left join messages m on m.event_id = e.id
-       where e.order_id = ? order by e.seq desc limit 300) latest order by seq`,
-    [orderId],
-  );
-  return rows;
-}
+/** The thread and log of an order, its latest 300 entries. */
+const THREAD = `select e.seq, e.type, e.payload, e.author_name as author, s.name as "shopName", e.side, e.occurred_at as at, m.body,
+    coalesce(e.person_id = app_person(), false) as "isOwn",
+    coalesce((select json_agg(json_build_object('id', a.id, 'name', a.name, 'isPicture', a.thumb_key is not null) order by a.at)
+      from attachments a where a.order_id = e.order_id and (a.message_id = m.id or a.move_id::text = e.payload ->> 'moveId')), '[]') as files
+  from events e join shops s on s.id = e.shop_id left join messages m on m.event_id = e.id
+  where e.order_id = o.id order by e.seq desc limit 300`;

@@ -1,6 +1,6 @@
 import 'server-only';
 import type { Tx } from '@/db/client';
-import { findWorksheets, type WorksheetRow } from '@/db/repositories/worksheets';
+import { WORKSHEET_COLUMNS, type WorksheetRow } from '@/db/repositories/worksheets';
 import type { Length } from '@/lib/domain/quantity/length';
 import type { PartnerFigures } from '@/lib/domain/sizes/partner-figures';
 
@@ -47,9 +47,9 @@ export interface SizesView {
   readonly sheets: readonly WorksheetRow[];
 }
 
-/** Revs with their working, newest first, what was repeated back, and the sheets the asker may see: two statements. */
+/** Revs with their working, newest first, what was repeated back, and the sheets the asker may see: one statement. */
 export async function loadSizes(tx: Tx, orderId: string): Promise<SizesView> {
-  const { rows } = await tx.raw<{ rows: Omit<SizesView, 'sheets'>[] }>(
+  const { rows } = await tx.raw<{ rows: SizesView[] }>(
     `select coalesce((select json_agg(x order by x.number desc) from (
          select v.number, v.unit, v.reason, v.author_name as author, v.released_at as "releasedAt",
            (select json_agg(json_build_object('lineId', l.line_id, 'title', o.title, 'since', l.since, 'source', l.source, 'steps', l.steps, 'checks', l.checks,
@@ -61,8 +61,11 @@ export async function loadSizes(tx: Tx, orderId: string): Promise<SizesView> {
          from revs v where v.order_id = ?) x), '[]') as revs,
        coalesce((select json_agg(y order by y.at desc) from (
          select what, keyed_lower_text as "keyedLower", keyed_upper_text as "keyedUpper", matches, author_name as author, at, since
-         from repeat_backs where order_id = ?) y), '[]') as said`,
-    [orderId, orderId],
+         from repeat_backs where order_id = ?) y), '[]') as said,
+       coalesce((select json_agg(z order by z.position) from (
+         select ${WORKSHEET_COLUMNS}, l.position from worksheets w join order_lines l on l.id = w.line_id
+         where w.order_id = ? and l.removed_at is null) z), '[]') as sheets`,
+    [orderId, orderId, orderId],
   );
-  return { ...(rows[0] ?? { revs: [], said: [] }), sheets: await findWorksheets(tx, orderId) };
+  return rows[0] ?? { revs: [], said: [], sheets: [] };
 }

@@ -1,6 +1,7 @@
 import 'server-only';
-import type { Tx } from '@/db/client';
+import { type AskerRow, beginUnknown, toActor } from '@/db/client';
 import type { Actor } from '@/lib/domain/actor';
+import { AppError } from '@/lib/errors';
 
 /** What the frame around every page shows. */
 export interface ShellView {
@@ -9,13 +10,19 @@ export interface ShellView {
   readonly colleagues: readonly { readonly id: string; readonly name: string }[];
 }
 
-/** The person's shops and the colleagues who may take over this screen: one statement. */
-export async function loadShell(tx: Tx, actor: Actor): Promise<ShellView> {
-  const { rows } = await tx.raw<{ rows: Pick<ShellView, 'shops' | 'colleagues'>[] }>(
-    `select coalesce((select json_agg(json_build_object('id', shop_id, 'name', name)) from shops_of_asker()), '[]') as shops,
-       coalesce((select json_agg(json_build_object('id', p.id, 'name', p.name) order by p.name) from memberships m join people p on p.id = m.person_id
-         where m.shop_id = ? and m.ended_at is null and p.id <> ?), '[]') as colleagues`,
-    [actor.shopId, actor.personId],
-  );
-  return { actor, ...(rows[0] ?? { shops: [], colleagues: [] }) };
+/**
+ * The person, their shops and the colleagues who may take over this screen: one statement, together with the
+ * question who is asking.
+ * @throws AppError unauthenticated when the sign-in has ended.
+ */
+export async function loadShell(ticket: { readonly tokenHash: string }): Promise<ShellView> {
+  const shell = await beginUnknown(async (tx) => {
+    const { rows } = await tx.raw<{
+      rows: { shell: (Omit<ShellView, 'actor'> & { asker: AskerRow }) | null }[];
+    }>('select app_shell(?) as shell', [ticket.tokenHash]);
+    return rows[0]?.shell;
+  });
+  const actor = toActor(shell?.asker);
+  if (!shell || !actor) throw new AppError('unauthenticated', 'Please sign in.');
+  return { actor, shops: shell.shops, colleagues: shell.colleagues };
 }

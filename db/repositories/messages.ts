@@ -31,11 +31,19 @@ export async function insertMessage(tx: Tx, actor: Actor, row: MessageRow): Prom
   });
 }
 
-/** Notes how far the asker has read; never back. */
-export async function markSeen(tx: Tx, actor: Actor, orderId: string, seq: number): Promise<void> {
-  await tx.raw(
-    `insert into thread_reads (person_id, order_id, shop_id, seen_seq) values (?, ?, ?, ?)
-     on conflict (person_id, order_id) do update set seen_seq = greatest(thread_reads.seen_seq, excluded.seen_seq)`,
-    [actor.personId, orderId, actor.shopId, seq],
+/** Notes how far the asker has read, never back and never past the end; undefined outside the asker's orders. */
+export async function markSeen(
+  tx: Tx,
+  actor: Actor,
+  orderId: string,
+  seq: number,
+): Promise<number | undefined> {
+  const { rows } = await tx.raw<{ rows: { seen: number }[] }>(
+    `insert into thread_reads (person_id, order_id, shop_id, seen_seq)
+     select ?, o.id, ?, least(?, o.log_seq) from orders o where o.id = ?
+     on conflict (person_id, order_id) do update set seen_seq = greatest(thread_reads.seen_seq, excluded.seen_seq)
+     returning seen_seq as seen`,
+    [actor.personId, actor.shopId, seq, orderId],
   );
+  return rows[0]?.seen;
 }

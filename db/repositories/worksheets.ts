@@ -15,13 +15,14 @@ export interface WorksheetRow {
   readonly made: Made | null;
 }
 
-const COLUMNS = `w.id, w.order_id as "orderId", w.line_id as "lineId", w.operation, w.raw, w.shared, w.version,
+/** Columns of a worksheet `w`, also where it is read beside other things. */
+export const WORKSHEET_COLUMNS = `w.id, w.order_id as "orderId", w.line_id as "lineId", w.operation, w.raw, w.shared, w.version,
   (select p.made from order_parts p where p.order_id = w.order_id and p.made is not null limit 1) as made`;
 
 /** Worksheets of an order that the asker may see, in the order of its lines. */
 export async function findWorksheets(tx: Tx, orderId: string): Promise<WorksheetRow[]> {
   const { rows } = await tx.raw<{ rows: WorksheetRow[] }>(
-    `select ${COLUMNS} from worksheets w join order_lines l on l.id = w.line_id where w.order_id = ? and l.removed_at is null order by l.position`,
+    `select ${WORKSHEET_COLUMNS} from worksheets w join order_lines l on l.id = w.line_id where w.order_id = ? and l.removed_at is null order by l.position`,
     [orderId],
   );
   return rows;
@@ -30,7 +31,7 @@ export async function findWorksheets(tx: Tx, orderId: string): Promise<Worksheet
 /** One worksheet. */
 export async function findWorksheet(tx: Tx, id: string): Promise<WorksheetRow | undefined> {
   const { rows } = await tx.raw<{ rows: WorksheetRow[] }>(
-    `select ${COLUMNS} from worksheets w where w.id = ?`,
+    `select ${WORKSHEET_COLUMNS} from worksheets w where w.id = ?`,
     [id],
   );
   return rows[0];

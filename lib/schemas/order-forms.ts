@@ -69,3 +69,6 @@ export const holdSchema = orderFormSchema.extend({
   waitsFor: z.enum(['sender', 'partner']),
   words: wordsSchema.min(1, 'Say what it waits for.'),
 });
+
+/** How far a thread has been read: the number of its last entry in view. */
+export const seenSchema = z.strictObject({ seq: z.int().min(0).max(1_000_000) });

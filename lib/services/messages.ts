@@ -47,7 +47,11 @@ export async function writeMessage(
   });
 }
 
-/** Notes how far a person has read the thread. */
-export async function seeThread(ticket: Ticket, orderId: string, seq: number): Promise<void> {
-  await begin(ticket, (tx, actor) => markSeen(tx, actor, orderId, seq));
+/** Notes how far a person has read the thread. @throws AppError not_found outside one's orders. */
+export async function seeThread(ticket: Ticket, orderId: string, seq: number): Promise<{ seen: number }> {
+  return begin(ticket, async (tx, actor) => {
+    const seen = await markSeen(tx, actor, orderId, seq);
+    if (seen === undefined) throw new AppError('not_found', 'There is no such order.');
+    return { seen };
+  });
 }

@@ -55,6 +55,10 @@ const ROUTES: readonly Route[] = [
     },
   },
   {
+    file: 'api/v1/orders/[orderId]/seen/route.ts',
+    ...{ method: 'PUT', at: `/api/v1/orders/${ORDER}/seen`, stranger: 404, body: { seq: 1 } },
+  },
+  {
     file: 'api/v1/worksheets/[worksheetId]/route.ts',
     ...{
       method: 'PUT',

@@ -10,6 +10,7 @@ import { sendNotice } from '@/lib/jobs/send-notice';
 import { expireQuote } from '@/lib/jobs/expire-quote';
 import { holdPort } from '@/lib/cli/start/ports';
 import { setClock } from '@/lib/adapters/clock';
+import { workOrderFilterSchema } from '@/lib/schemas/work-orders';
 import { writeMessage } from '@/lib/services/messages';
 import { runOrderCommand } from '@/lib/services/order-commands';
 import { type Mailbox, startMailbox } from '../../fake-services/mailbox';
@@ -169,8 +170,8 @@ describe('statements', () => {
       return seen.length;
     };
     const { owner } = order.sender;
-    const shell = 2;
-    const filter = { show: 'all' as const, find: 'marrick', before: null };
+    const shell = 1;
+    const filter = workOrderFilterSchema.parse({ show: 'all', find: 'marrick' });
     expect(shell + (await count(() => begin(owner, loadBench)))).toBeLessThanOrEqual(6);
     expect(
       shell + (await count(() => begin(owner, (tx, actor) => loadWorkOrders(tx, actor, filter)))),

@@ -2,7 +2,7 @@ import { TagStub } from '@/components/tag/tag-stub';
 import { Empty } from '@/components/ui/empty';
 import { Sheet } from '@/components/ui/sheet';
 import { begin } from '@/db/client';
-import { loadBench, type OrderStub } from '@/db/read-models/bench';
+import { loadBench, MOST_COUNTED, type OrderStub } from '@/db/read-models/bench';
 import { loadCalendars } from '@/db/read-models/calendars';
 import { requirePageTicket } from '@/lib/auth/ticket';
 import { now } from '@/lib/adapters/clock';
@@ -29,7 +29,7 @@ export default async function BenchPage() {
         <span className="note">
           {bench.yoursCount === 0
             ? 'Nothing waits on you.'
-            : `${bench.yoursCount} ${bench.yoursCount === 1 ? 'order waits' : 'orders wait'} on you.${oldest ? ` The oldest has waited ${waited(oldest)}.` : ''}`}
+            : `${sayCount(bench.yoursCount)} on you.${oldest ? ` The oldest has waited ${waited(oldest)}.` : ''}`}
         </span>
         {can(actor, 'order') && (
           <a href="/orders/new" className="btn ml-auto">
@@ -59,10 +59,7 @@ export default async function BenchPage() {
           {bench.theirs.length > 0 && (
             <>
               <h2 className="mt-6 mb-3 text-[19px]">
-                Their move{' '}
-                <span className="note font-normal">
-                  {bench.theirsCount} {bench.theirsCount === 1 ? 'order waits' : 'orders wait'} on others
-                </span>
+                Their move <span className="note font-normal">{sayCount(bench.theirsCount)} on others</span>
               </h2>
               <ul>
                 {bench.theirs.map((stub) => (
@@ -115,6 +112,11 @@ export default async function BenchPage() {
   );
 }
 
+function sayCount(count: number): string {
+  if (count === 1) return '1 order waits';
+  return count < MOST_COUNTED ? `${count} orders wait` : `${MOST_COUNTED} orders or more wait`;
+}
+
 function sayWaiting(calendar: Calendar, since: Date, moment: Date): string {
   return sayWorkingTime(workingMinutes(calendar, since, moment), minutesOfDay(calendar));
 }
@@ -131,5 +133,6 @@ function stubProps(stub: OrderStub, moment: Date) {
     press: stub.step === null ? 'Open' : 'Take it up',
     punches: stub.punches,
     stopped: stub.stopped,
+    unread: stub.unread,
   };
 }

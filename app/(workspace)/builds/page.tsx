@@ -1,3 +1,4 @@
+import { z } from 'zod';
 import { Scroll } from '@/components/ui/scroll';
 import { Empty } from '@/components/ui/empty';
 import { begin } from '@/db/client';
@@ -8,8 +9,16 @@ import { sayDay } from '@/lib/forms/say';
 
 export const metadata = { title: 'Builds' };
 
-export default async function BuildsPage() {
-  const builds = await begin(await requirePageTicket(), loadBuilds);
+export default async function BuildsPage({ searchParams }: { searchParams: Promise<{ below?: unknown }> }) {
+  const below =
+    z.coerce
+      .number()
+      .int()
+      .positive()
+      .safeParse((await searchParams).below).data ?? null;
+  const builds = await begin(await requirePageTicket(), (tx, actor) =>
+    loadBuilds(tx, actor, { limit: 100, below }),
+  );
   const year = now().getUTCFullYear();
   return (
     <main className="page">
@@ -19,7 +28,7 @@ export default async function BuildsPage() {
           New build
         </a>
       </div>
-      {builds.length === 0 ? (
+      {builds.rows.length === 0 ? (
         <Empty title="No builds yet">
           A build is one engine: how it is made, its parts, and the work they need.
         </Empty>
@@ -38,7 +47,7 @@ export default async function BuildsPage() {
                 </tr>
               </thead>
               <tbody>
-                {builds.map((build) => (
+                {builds.rows.map((build) => (
                   <tr key={build.id} className="border-b border-rule-2">
                     <th scope="row" className="px-4 py-2.5 text-left">
                       <a href={`/builds/${build.id}`}>B-{build.number}</a>
@@ -54,6 +63,11 @@ export default async function BuildsPage() {
             </table>
           </Scroll>
         </div>
+      )}
+      {builds.next !== null && (
+        <a href={`/builds?below=${builds.next}`} className="btn btn-ghost mt-3">
+          Older builds
+        </a>
       )}
     </main>
   );

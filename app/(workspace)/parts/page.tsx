@@ -1,4 +1,5 @@
 import { randomUUID } from 'node:crypto';
+import { z } from 'zod';
 import { addPartAction } from '@/app/(workspace)/builds/actions';
 import { PartFields } from '@/components/builds/part-fields';
 import { Form, Submit } from '@/components/forms/form';
@@ -12,9 +13,10 @@ import { sayWhereabouts } from '@/lib/forms/part-words';
 
 export const metadata = { title: 'Parts' };
 
-export default async function PartsPage() {
+export default async function PartsPage({ searchParams }: { searchParams: Promise<{ after?: unknown }> }) {
+  const after = z.uuid().safeParse((await searchParams).after).data ?? null;
   const { parts, actor } = await begin(await requirePageTicket(), async (tx, asker) => ({
-    parts: await loadParts(tx, asker),
+    parts: await loadParts(tx, asker, { limit: 100, after }),
     actor: asker,
   }));
   return (
@@ -22,7 +24,7 @@ export default async function PartsPage() {
       <h1 className="mb-4">Parts</h1>
       <div className="grid items-start gap-5 xl:grid-cols-[minmax(0,1fr)_372px]">
         <Sheet title="Everything of ours, and who has it">
-          {parts.length === 0 && <p className="note">No parts are written down yet.</p>}
+          {parts.rows.length === 0 && <p className="note">No parts are written down yet.</p>}
           <Scroll label="Parts">
             <table className="w-full text-[15px]">
               <thead>
@@ -34,7 +36,7 @@ export default async function PartsPage() {
                 </tr>
               </thead>
               <tbody>
-                {parts.map((part) => (
+                {parts.rows.map((part) => (
                   <tr key={part.id} className="border-b border-rule-2">
                     <th scope="row" className="py-2 pr-3 text-left font-normal">
                       {part.pieces} {part.kind}
@@ -53,6 +55,11 @@ export default async function PartsPage() {
               </tbody>
             </table>
           </Scroll>
+          {parts.next !== null && (
+            <a href={`/parts?after=${parts.next}`} className="btn btn-ghost mt-3">
+              Older parts
+            </a>
+          )}
         </Sheet>
         {can(actor, 'builds') && (
           <Sheet title="A part with no build" note="Stock, or a loose part that belongs to no engine here.">

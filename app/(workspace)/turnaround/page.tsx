@@ -4,7 +4,7 @@ import { Scroll } from '@/components/ui/scroll';
 import { Empty } from '@/components/ui/empty';
 import { begin } from '@/db/client';
 import { loadCalendars } from '@/db/read-models/calendars';
-import { loadFinished, type TurnaroundOrder } from '@/db/read-models/turnaround';
+import { loadFinished, MOST_FINISHED, type TurnaroundOrder } from '@/db/read-models/turnaround';
 import { now } from '@/lib/adapters/clock';
 import { requirePageTicket } from '@/lib/auth/ticket';
 import { can } from '@/lib/domain/actor';
@@ -50,8 +50,8 @@ export default async function TurnaroundPage() {
       <div className="mb-4 flex flex-wrap items-baseline gap-x-4">
         <h1>Turnaround</h1>
         <span className="note">
-          Work sent out, last 12 months: {orders.length} finished orders. {open} are still open and not
-          counted in the figures.
+          Work sent out, last 12 months: {orders.length < MOST_FINISHED ? '' : 'the latest '}
+          {orders.length} finished orders. {open} are still open and not counted in the figures.
         </span>
       </div>
       {!all ? (

@@ -56,6 +56,11 @@ export class Children {
     });
   }
 
+  /** The process of a program that is running. */
+  pidOf(name: string): number | undefined {
+    return this.#running.find((one) => one.name === name)?.child.pid;
+  }
+
   /** Runs a program to its end; its words are shown only when it fails. */
   run(program: Program): Promise<string> {
     return runProgram(program);

@@ -132,7 +132,17 @@ function spawnServer(
     path.join(programs, 'postgres'),
     [
       ...['-D', dataDir, '-p', String(port), '-h', '127.0.0.1', '-k', ''],
-      ...['-c', 'max_connections=200', '-c', 'logging_collector=off', '-c', 'timezone=UTC', ...quick],
+      ...[
+        '-c',
+        'max_connections=200',
+        '-c',
+        'logging_collector=off',
+        '-c',
+        'timezone=UTC',
+        '-c',
+        'random_page_cost=1.1',
+        ...quick,
+      ],
     ],
     // A group of its own: Ctrl-C reaches only us, and we end it last.
     {

@@ -5,6 +5,7 @@ import { writeMessageAction } from '@/app/(workspace)/orders/[orderId]/actions';
 import { LiveRefresh } from '@/components/live/live-refresh';
 import { Tag } from '@/components/tag/tag';
 import { Composer } from '@/components/thread/composer';
+import { SeenMark } from '@/components/thread/seen-mark';
 import { Thread } from '@/components/thread/thread';
 import type { OrderView } from '@/db/read-models/order-page';
 import { type Actor, can } from '@/lib/domain/actor';
@@ -39,6 +40,7 @@ export function OrderFrame({ view, actor, tab, children, hidesSizes = false }: O
   return (
     <main className="page">
       <LiveRefresh orderId={facts.id} />
+      <SeenMark orderId={facts.id} last={view.thread.at(-1)?.seq ?? 0} seen={view.seenSeq} />
       <Tag
         number={facts.number}
         title={view.title}
@@ -76,7 +78,13 @@ export function OrderFrame({ view, actor, tab, children, hidesSizes = false }: O
         </div>
         <div className="grid gap-5">
           {facts.status !== 'draft' && other !== null && (
-            <Thread entries={thread} side={side} unit={actor.unit} timeZone={actor.timeZone}>
+            <Thread
+              entries={thread}
+              seenSeq={view.seenSeq}
+              side={side}
+              unit={actor.unit}
+              timeZone={actor.timeZone}
+            >
               {can(actor, 'message') && (
                 <Composer
                   action={writeMessageAction}

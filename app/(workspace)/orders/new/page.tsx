@@ -30,7 +30,7 @@ export default async function NewOrderPage({ searchParams }: { searchParams: Pro
     // An earlier order to begin from: what was asked of whom; its parts, sizes and price stay with it.
     like: likeId.success ? await loadOrder(tx, actor, likeId.data) : undefined,
     partners: await loadPartners(tx, actor),
-    parts: await loadParts(tx, actor),
+    parts: (await loadParts(tx, actor, { limit: 300, after: null })).rows,
   }));
   const atHome = parts.filter((part) => part.where.some(({ place }) => place === 'home'));
   const shops = partners.filter(({ state }) => state === 'active' || state === 'invited');
