@@ -1,12 +1,14 @@
 'use client';
 
 import { useEffect, useMemo, useRef, useState } from 'react';
+import { SheetConflict } from '@/components/worksheet/sheet-conflict';
 import { SheetAnswer } from '@/components/worksheet/sheet-answer';
 import { SheetFields } from '@/components/worksheet/sheet-fields';
 import { BlockMap } from '@/components/parts-map/block-map';
 import { CrankMap } from '@/components/parts-map/crank-map';
 import type { Made } from '@/lib/domain/builds/made';
 import { operationByKey } from '@/lib/domain/operations/catalogue';
+import { type House, withHouse } from '@/lib/domain/operations/house';
 import type { Raw } from '@/lib/domain/operations/fill';
 import type { LengthUnit } from '@/lib/domain/quantity/length';
 import { workSheet } from '@/lib/domain/sizes/release';
@@ -18,6 +20,8 @@ interface WorksheetProps {
   made: Made;
   unit: LengthUnit;
   raw: Raw;
+  /** The defaults of the shop whose order it is. */
+  house?: House | undefined;
 }
 
 type Saved = 'kept' | 'keeping' | 'stale' | 'waiting';
@@ -26,7 +30,7 @@ const WORDS: Readonly<Record<Saved, string>> = {
   kept: 'Kept as you type',
   keeping: 'Keeping …',
   waiting: 'Not kept yet: no connection. What you typed is still here.',
-  stale: 'Somebody else wrote on this sheet. Load the page again to see it; what you typed is still here.',
+  stale: 'Somebody else wrote on this sheet. What you typed is still here.',
 };
 
 /** The sheet of one operation: it works itself out while one types, in the browser, and keeps what was typed. */
@@ -37,23 +41,33 @@ export function Worksheet({
   made,
   unit,
   raw: first,
+  house,
 }: WorksheetProps) {
-  const operation = operationByKey(key);
+  const operation = useMemo(() => withHouse(operationByKey(key), house), [key, house]);
   const [raw, setRaw] = useState<Raw>(first);
   const [saved, setSaved] = useState<Saved>('kept');
   const [kept, setKept] = useState<Raw>(first);
+  const [theirs, setTheirs] = useState<Theirs>();
   const version = useRef(firstVersion);
   // One save after the other: each carries the version that the one before it made.
   const saves = useRef<Promise<void>>(Promise.resolve());
-  const { filled, worked } = useMemo(() => workSheet(key, raw, { made, unit }), [key, raw, made, unit]);
+  const { filled, worked } = useMemo(
+    () => workSheet(key, raw, { made, unit, house }),
+    [key, raw, made, unit, house],
+  );
 
   const isOpen = raw !== kept && saved !== 'stale';
   useEffect(() => {
     if (!isOpen) return undefined;
     const save = async () => {
       const answer = await keep(id, version.current, raw);
-      if (answer === 'stale' || answer === 'waiting') {
+      if (answer === 'waiting') {
         setSaved(answer);
+        return;
+      }
+      if (typeof answer === 'object') {
+        setTheirs(answer);
+        setSaved('stale');
         return;
       }
       version.current = answer;
@@ -72,12 +86,28 @@ export function Worksheet({
     };
   }, [id, raw, isOpen]);
 
+  const settle = (sheet: Raw, stands: Theirs) => {
+    version.current = stands.version;
+    setKept(stands.raw);
+    setRaw(sheet);
+    setTheirs(undefined);
+    setSaved('kept');
+  };
   const set = (path: string, text: string) => setRaw((before) => ({ ...before, [path]: text }));
   return (
     <>
       <p className="note mb-3" aria-live="polite">
         {WORDS[isOpen && saved === 'kept' ? 'keeping' : saved]}
       </p>
+      {theirs && (
+        <SheetConflict
+          operation={operation}
+          mine={raw}
+          theirs={theirs.raw}
+          onKeepMine={() => settle(raw, theirs)}
+          onTakeTheirs={() => settle(theirs.raw, theirs)}
+        />
+      )}
       <div className="grid items-start gap-6 xl:grid-cols-[minmax(0,1fr)_380px]">
         <div className="grid gap-5">
           {operation.part === 'crank' && (
@@ -104,8 +134,14 @@ export function Worksheet({
   );
 }
 
-/** Keeps the sheet; survives leaving the page. Answers the new version, or why it was not kept. */
-async function keep(id: string, version: number, raw: Raw): Promise<number | 'stale' | 'waiting'> {
+/** A sheet as somebody else has left it. */
+interface Theirs {
+  readonly version: number;
+  readonly raw: Raw;
+}
+
+/** Keeps the sheet; survives leaving the page. Answers the new version, what somebody else wrote, or that it must wait. */
+async function keep(id: string, version: number, raw: Raw): Promise<number | Theirs | 'waiting'> {
   try {
     const response = await fetch(`/api/v1/worksheets/${id}`, {
       method: 'PUT',
@@ -113,7 +149,7 @@ async function keep(id: string, version: number, raw: Raw): Promise<number | 'st
       body: JSON.stringify({ raw }),
       keepalive: true,
     });
-    if (response.status === 412) return 'stale';
+    if (response.status === 412) return ((await response.json()) as { current: Theirs }).current;
     if (!response.ok) return 'waiting';
     return ((await response.json()) as { version: number }).version;
   } catch {

@@ -3,6 +3,7 @@ import type { Tx } from '@/db/client';
 import { findFacts } from '@/db/repositories/order-facts';
 import type { Actor } from '@/lib/domain/actor';
 import type { Made } from '@/lib/domain/builds/made';
+import type { House } from '@/lib/domain/operations/house';
 import type { CommandKind } from '@/lib/domain/orders/commands';
 import { allowedCommands } from '@/lib/domain/orders/decide';
 import type { Facts, Side } from '@/lib/domain/orders/facts';
@@ -18,6 +19,8 @@ export interface OrderView {
   readonly engine: string;
   /** How the engine is made, as it was when the order was drafted. */
   readonly made: Made | null;
+  /** The sender's own defaults for worksheets. */
+  readonly house: House;
   /** Of the sender only. */
   readonly buildNumber: number | null;
   readonly notes: string;
@@ -48,7 +51,15 @@ export interface ThreadEntry {
 
 interface HeadRow extends Pick<
   OrderView,
-  'title' | 'made' | 'engine' | 'buildNumber' | 'notes' | 'standingInstruction' | 'transport' | 'reference'
+  | 'title'
+  | 'house'
+  | 'made'
+  | 'engine'
+  | 'buildNumber'
+  | 'notes'
+  | 'standingInstruction'
+  | 'transport'
+  | 'reference'
 > {
   revAt: Date | null;
   seenSeq: number;
@@ -63,6 +74,8 @@ export async function loadOrder(tx: Tx, actor: Actor, orderId: string): Promise<
     `select o.title, o.notes, o.standing_instruction as "standingInstruction", o.transport,
        coalesce((select p.engine from order_parts p where p.order_id = o.id and p.engine <> '' limit 1), '') as engine,
        (select p.made from order_parts p where p.order_id = o.id and p.made is not null limit 1) as made,
+       (select json_build_object('unit', coalesce(h.house ->> 'unit', h.unit), 'typed', coalesce(h.house -> 'typed', '{}'::jsonb))
+          from shops h where h.id = o.sender_shop_id) as house,
        (select b.number from builds b where b.id = o.build_id) as "buildNumber",
        coalesce((select r.text from order_references r where r.order_id = o.id and r.shop_id = ?), '') as reference,
        (select v.released_at from revs v where v.order_id = o.id and v.number = o.latest_rev) as "revAt",
@@ -90,3 +103,9 @@ const THREAD = `select e.seq, e.type, e.payload, e.author_name as author, s.name
       from attachments a where a.order_id = e.order_id and (a.message_id = m.id or a.move_id::text = e.payload ->> 'moveId')), '[]') as files
   from events e join shops s on s.id = e.shop_id left join messages m on m.event_id = e.id
   where e.order_id = o.id order by e.seq desc limit 300`;
+
+/** Whether an order of this id can be seen. */
+export async function isThere(tx: Tx, id: string): Promise<boolean> {
+  const row: unknown = await tx('orders').where({ id }).first('id');
+  return row !== undefined;
+}

@@ -20,6 +20,7 @@ export interface DraftHeader {
 /** A line of a draft. */
 export interface DraftLine {
   readonly id: string;
+  readonly position: number;
   readonly operation: string;
   readonly catalogueVersion: number;
   readonly needsSizes: boolean;
@@ -54,14 +55,33 @@ export async function insertDraft(tx: Tx, actor: Actor, draft: DraftHeader): Pro
   return number;
 }
 
-/** Changes a draft's header if it is still the version seen. */
+/** A draft as it stood before a change. */
+export interface DraftBefore {
+  readonly number: number;
+  readonly version: number;
+  readonly lines: readonly { readonly id: string; readonly operation: string }[];
+}
+
+/** Takes a draft's row for this transaction; undefined when it is no draft of the asker's shop. */
+export async function takeDraft(tx: Tx, id: string): Promise<DraftBefore | undefined> {
+  const order = await tx<{ id: string; status: string; number: number; version: number }>('orders')
+    .where({ id, status: 'draft' })
+    .forUpdate()
+    .first('number', 'version');
+  if (!order) return undefined;
+  const lines = await tx<{ id: string; order_id: string; operation: string }>('order_lines')
+    .where({ order_id: id })
+    .select('id', 'operation');
+  return { ...order, lines };
+}
+
+/** Writes a draft's header. */
 export async function updateDraft(
   tx: Tx,
   draft: DraftHeader,
-  number: number,
-  version: number,
-): Promise<boolean> {
-  const changed = await tx('orders')
+  { number, version }: Pick<DraftBefore, 'number' | 'version'>,
+): Promise<void> {
+  await tx('orders')
     .where({ id: draft.id, status: 'draft', version })
     .update({
       ...{
@@ -81,7 +101,57 @@ export async function updateDraft(
         version: version + 1,
       },
     });
-  return changed === 1;
+}
+
+/** Takes the draft's lines off that are not kept, and its parts anew. */
+export async function replaceParts(
+  tx: Tx,
+  orderId: string,
+  partIds: readonly string[],
+  keptLines: readonly string[],
+): Promise<void> {
+  await tx('order_line_parts').where({ order_id: orderId }).delete();
+  await tx('worksheets')
+    .where({ order_id: orderId })
+    .whereNotIn('line_id', [...keptLines])
+    .delete();
+  await tx('order_lines')
+    .where({ order_id: orderId })
+    .whereNotIn('id', [...keptLines])
+    .delete();
+  await tx('order_parts').where({ order_id: orderId }).delete();
+  await insertOrderParts(tx, orderId, partIds);
+}
+
+/** Puts the draft's lines into their order and adds the new ones; a line that is kept keeps its worksheet. */
+export async function replaceLines(
+  tx: Tx,
+  actor: Actor,
+  orderId: string,
+  lines: readonly DraftLine[],
+): Promise<void> {
+  const kept = await tx<{ id: string; order_id: string }>('order_lines')
+    .where({ order_id: orderId })
+    .select('id');
+  const isKept = (line: DraftLine) => kept.some(({ id }) => id === line.id);
+  await tx('order_lines')
+    .where({ order_id: orderId })
+    .update({ position: tx.raw('position + 1000') });
+  for (const { id, position } of lines.filter(isKept)) {
+    await tx('order_lines').where({ id }).update({ position });
+  }
+  await insertLines(
+    tx,
+    actor,
+    orderId,
+    lines.filter((line) => !isKept(line)),
+  );
+  const links = lines
+    .filter(isKept)
+    .flatMap((line) =>
+      line.partIds.map((partId) => ({ line_id: line.id, order_id: orderId, part_id: partId })),
+    );
+  if (links.length > 0) await tx('order_line_parts').insert(links);
 }
 
 /** Takes a snapshot of the parts, as the partner will see them: engine words and configuration come along. */
@@ -103,11 +173,11 @@ export async function insertLines(
 ): Promise<void> {
   if (lines.length === 0) return;
   await tx('order_lines').insert(
-    lines.map((line, index) => ({
+    lines.map((line) => ({
       ...{
         id: line.id,
         order_id: orderId,
-        position: index + 1,
+        position: line.position,
         operation: line.operation,
         title: line.title,
       },

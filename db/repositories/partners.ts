@@ -62,6 +62,23 @@ export async function takeInvitation(
   return rows[0];
 }
 
+/** A partner that the asker's shop has invited and that nobody has claimed yet, with its latest invitation. */
+export async function findInvited(
+  tx: Tx,
+  shopId: string,
+): Promise<{ shopName: string; email: string; invitationId: string; isOpen: boolean } | undefined> {
+  const { rows } = await tx.raw<{
+    rows: { shopName: string; email: string; invitationId: string; isOpen: boolean }[];
+  }>(
+    `select s.name as "shopName", i.email_norm as email, i.id as "invitationId",
+       i.used_at is null and i.revoked_at is null and i.until > now() + interval '1 day' as "isOpen"
+     from invitations i join shops s on s.id = i.invited_shop_id
+     where i.invited_shop_id = ? and i.shop_id <> i.invited_shop_id and s.claimed_at is null order by i.created_at desc, i.id desc limit 1`,
+    [shopId],
+  );
+  return rows[0];
+}
+
 /** Queues a mail to an address that may belong to nobody here. */
 export async function tellAddress(
   tx: Tx,

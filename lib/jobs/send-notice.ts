@@ -7,6 +7,7 @@ import { linkAddress, linkSecret } from '@/lib/adapters/links';
 import { sendMail } from '@/lib/adapters/mail';
 import type { ShopUnit } from '@/lib/domain/actor';
 import { sayEvent } from '@/lib/domain/orders/say-event';
+import { sayDay } from '@/lib/forms/say';
 import { type Letter, letterHtml, letterText } from '@/lib/jobs/letters';
 
 /**
@@ -35,24 +36,11 @@ export async function sendNotice(noticeId: string): Promise<void> {
 /** After three days a mail tells nobody anything new; the bench does. */
 const TOO_OLD = 3 * 24 * 3600 * 1000;
 
-function invitationLetter({ kind, detail }: NoticeRow): Letter {
-  const { invitingShop = '', shop = '', invitationId = '', resetId = '' } = detail;
-  if (kind === 'password.reset') {
-    return {
-      subject: 'Set a new password',
-      number: null,
-      headline: 'Set a new password',
-      lines: [
-        'Somebody, probably you, asked for a new password. The link opens once, within one hour.',
-        'If it was not you, leave this mail alone.',
-      ],
-      press: {
-        label: 'Set a new password',
-        address: linkAddress(`/new-password/${linkSecret('reset', resetId)}`),
-      },
-    };
-  }
-  const isPartner = kind === 'invitation.partner';
+function invitationLetter(notice: NoticeRow): Letter {
+  if (notice.kind === 'password.reset') return resetLetter(notice);
+  if (notice.kind === 'invitation.order') return firstOrderLetter(notice);
+  const { invitingShop = '', shop = '', invitationId = '' } = notice.detail;
+  const isPartner = notice.kind === 'invitation.partner';
   return {
     subject: `${invitingShop} invites you to Wiretag`,
     number: null,
@@ -67,6 +55,40 @@ function invitationLetter({ kind, detail }: NoticeRow): Letter {
       label: 'Come in',
       address: linkAddress(`/invitation/${linkSecret('invitation', invitationId)}`),
     },
+  };
+}
+
+function resetLetter({ detail: { resetId = '' } }: NoticeRow): Letter {
+  return {
+    subject: 'Set a new password',
+    number: null,
+    headline: 'Set a new password',
+    lines: [
+      'Somebody, probably you, asked for a new password. The link opens once, within one hour.',
+      'If it was not you, leave this mail alone.',
+    ],
+    press: {
+      label: 'Set a new password',
+      address: linkAddress(`/new-password/${linkSecret('reset', resetId)}`),
+    },
+  };
+}
+
+/** The one e-mail to a machine shop that is not here yet: the order and the way in. */
+function firstOrderLetter({ detail }: NoticeRow): Letter {
+  const { invitingShop = '', shop = '', invitationId = '', orderId = '', number = '' } = detail;
+  const { neededBackOn = '' } = detail;
+  const link = `/invitation/${linkSecret('invitation', invitationId)}?order=${orderId}`;
+  return {
+    subject: `WO ${number} from ${invitingShop}`,
+    number: Number(number),
+    headline: `${invitingShop} sends you a work order`,
+    lines: [
+      `Its sizes, parts and messages are on Wiretag, where ${shop} is set up for you already.`,
+      ...(neededBackOn === '' ? [] : [`Needed back ${sayDay(neededBackOn, now().getUTCFullYear())}.`]),
+      'Give your name and a password, and name your price. The link opens once, within two weeks.',
+    ],
+    press: { label: 'See the order', address: linkAddress(link) },
   };
 }
 

@@ -57,6 +57,8 @@ export const signInSchema = z.object({
 
 export const acceptSchema = z.object({
   secret: z.string().min(20).max(100),
+  /** The order that came with the invitation, to go on to. */
+  orderId: z.uuid().optional().catch(undefined),
   name: nameSchema,
   password: newPasswordSchema,
 });

@@ -7,14 +7,11 @@ const optionalId = z
   .transform((text) => (text === '' ? null : text))
   .pipe(z.uuid('Choose again.').nullable());
 
-/** A new work order, as its form sends it. Only sending needs everything to be there. */
+/** A work order that is not sent yet, as it is kept while one types: anything may still be missing. */
 export const draftSchema = z.object({
   partnerShopId: optionalId,
-  partIds: z.array(z.uuid()).min(1, 'Choose at least one part.').max(30),
-  operations: z
-    .array(z.string().refine((key) => findOperation(key) !== undefined, 'Choose again.'))
-    .min(1, 'Choose at least one operation.')
-    .max(30),
+  partIds: z.array(z.uuid()).max(30),
+  operations: z.array(z.string().refine((key) => findOperation(key) !== undefined, 'Choose again.')).max(30),
   neededBackOn: daySchema,
   transport: z.enum(['delivered', 'fetched'], 'Say how the parts travel.'),
   acceptRule: z.enum(['readings', 'own_check'], 'Say how the work is accepted.'),
@@ -24,3 +21,9 @@ export const draftSchema = z.object({
 });
 
 export type DraftInput = z.infer<typeof draftSchema>;
+
+/** The same when one goes on from the form: a part and an operation must be named. */
+export const finishedDraftSchema = draftSchema.extend({
+  partIds: draftSchema.shape.partIds.min(1, 'Choose at least one part.'),
+  operations: draftSchema.shape.operations.min(1, 'Choose at least one operation.'),
+});

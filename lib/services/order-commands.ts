@@ -17,6 +17,7 @@ import type { Facts, Side } from '@/lib/domain/orders/facts';
 import { didOf } from '@/lib/domain/orders/fold';
 import { ORDER_RULES } from '@/lib/domain/orders/rules';
 import { AppError, type ErrorCode } from '@/lib/errors';
+import { writeToInvited } from '@/lib/services/invitations';
 
 /** One press of one button on one order. */
 export interface OrderCommandInput {
@@ -149,6 +150,10 @@ async function write(tx: Tx, doing: Doing, decision: Decision): Promise<void> {
   await writeEvents(logged, facts, decision.events, did);
   await turnClock(logged, facts, decision.facts, decision.stand);
   await tell(tx, doing, decision);
+  const { partner, id, number, neededBackOn } = decision.facts;
+  if (doing.command.do === 'send' && partner) {
+    await writeToInvited(tx, actor, partner.shopId, { id, number, neededBackOn });
+  }
 }
 
 /** The side that has a new step is told; a quote's last day sends a task. */

@@ -7,6 +7,7 @@ import {
   shareWorksheet,
   type WorksheetRow,
 } from '@/db/repositories/worksheets';
+import { findHouse } from '@/db/repositories/shops';
 import type { Ticket } from '@/lib/domain/actor';
 import type { Made } from '@/lib/domain/builds/made';
 import { findPreset } from '@/lib/domain/builds/presets';
@@ -70,9 +71,10 @@ export async function releaseSizes(
   return begin(ticket, async (tx, actor) => {
     requirePermission(actor, 'sizes');
     const sheets = await findWorksheets(tx, input.orderId);
+    const house = await findHouse(tx, actor.shopId);
     const begun = sheets.filter((sheet) => Object.values(sheet.raw).some((text) => text !== ''));
     const lines: ReleasedLine[] = begun.map((sheet) => {
-      const line = releasedLine(sheet.lineId, sheet, { made: madeOf(sheet), unit: actor.unit });
+      const line = releasedLine(sheet.lineId, sheet, { made: madeOf(sheet), unit: actor.unit, house });
       if (!line)
         throw new AppError(
           'invalid',

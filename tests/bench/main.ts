@@ -1,5 +1,6 @@
 import { randomUUID } from 'node:crypto';
 import { rmSync } from 'node:fs';
+import { loadavg } from 'node:os';
 import path from 'node:path';
 import pg from 'pg';
 import type { Cookie } from 'playwright-core';
@@ -12,7 +13,7 @@ import { homeFolder } from '@/lib/cli/start/settings';
 import { demoId } from '@/lib/demo/cast';
 import { DEMO_PASSWORD } from '@/lib/demo/sign-ins';
 import { launchBrowser, signIn } from '../support/browser';
-import { type Ask, measure, median, ratioOf } from './load';
+import { type Ask, measure, ratioOf } from './load';
 import { weigh } from './page-weight';
 
 const ROUNDS = 5;
@@ -107,7 +108,7 @@ async function measureServer(
   const pages: readonly (readonly [string, string])[] = [
     ['Bench', '/bench'],
     ['Work orders', '/orders?show=all'],
-    ['the order page', `/orders/${order}`],
+    ['the order page', `/orders/${order}/sizes`],
   ];
   for (const [name, address] of pages) {
     await measure(pid, get(product.web + address), 40, 10);
@@ -337,7 +338,11 @@ async function bench(): Promise<number> {
   say(
     `${lines.length} numbers, medians of ${ROUNDS} rounds where two servers are compared; ${unmet.length} not met.`,
   );
-  say(`Load of the machine: ${median([0])}`);
+  say(
+    `Load of the machine at the end: ${loadavg()
+      .map((load) => load.toFixed(1))
+      .join(', ')}`,
+  );
   return unmet.length === 0 ? 0 : 1;
 }
 

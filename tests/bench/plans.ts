@@ -85,7 +85,7 @@ export function pagesOf(
     [
       'settings',
       async (tx, actor) => {
-        await loadShop(tx, actor);
+        await loadShop(tx, actor, '');
         await loadPeople(tx, actor);
       },
     ],

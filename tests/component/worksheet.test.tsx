@@ -1,4 +1,4 @@
-import { render, screen, waitFor } from '@testing-library/react';
+import { render, screen, waitFor, within } from '@testing-library/react';
 import userEvent from '@testing-library/user-event';
 import { afterEach, describe, expect, it, vi } from 'vitest';
 import { Worksheet } from '@/components/worksheet/worksheet';
@@ -66,10 +66,48 @@ describe('a worksheet', () => {
     await screen.findByText('Kept as you type');
   });
 
-  it('says so when somebody else wrote on it, and loses nothing', async () => {
-    show(() => Response.json({}, { status: 412 }));
+  it('shows both values when somebody else wrote on it, loses nothing, and keeps the one that is chosen', async () => {
+    const theirs = { version: 7, raw: { ...RAW, 'bores.1': '2.2407', least: '.0025' } };
+    const answers = [Response.json({ current: theirs }, { status: 412 }), Response.json({ version: 8 })];
+    const sent = show(() => answers.shift() ?? kept());
     await bores(['2.2405']);
     await screen.findByText(/Somebody else wrote on this sheet/, undefined, { timeout: 2000 });
-    expect(screen.getByLabelText<HTMLInputElement>('Bearing bores, Rod 1').value).toBe('2.2405');
+    const conflict = screen.getByRole('alert', { name: 'Two versions of this sheet' });
+    const rows = within(conflict)
+      .getAllByRole('row')
+      .slice(1)
+      .map((row) => [...row.children].map((cell) => cell.textContent));
+    expect(rows).toEqual([
+      ['Oil clearance, at least', '.0025', '.0020'],
+      ['Bearing bores, 1', '2.2407', '2.2405'],
+    ]);
+    await userEvent.click(screen.getByRole('button', { name: 'Keep mine' }));
+    await waitFor(() => expect(sent.at(-1)?.headers).toMatchObject({ 'if-match': '"7"' }), { timeout: 2000 });
+    expect(sent.at(-1)?.raw).toMatchObject({ 'bores.1': '2.2405', least: '.0020' });
+    await screen.findByText('Kept as you type');
+  });
+
+  it('takes the other version with one press', async () => {
+    const theirs = { version: 7, raw: { ...RAW, 'bores.1': '2.2407' } };
+    show(() => Response.json({ current: theirs }, { status: 412 }));
+    await bores(['2.2405']);
+    await userEvent.click(await screen.findByRole('button', { name: 'Take theirs' }, { timeout: 2000 }));
+    expect(screen.getByLabelText<HTMLInputElement>('Bearing bores, Rod 1').value).toBe('2.2407');
+    expect(screen.queryByRole('alert')).toBeNull();
+  });
+
+  it('takes the shop’s own default where a box is empty, in the shop’s unit, and says so', async () => {
+    if (!made) throw new Error('No inline four');
+    const house = {
+      unit: 'mm' as const,
+      typed: { 'grind_rods.limit': '0.0254', 'grind_rods.undersize': '.010' },
+    };
+    vi.stubGlobal('fetch', () => Promise.resolve(kept()));
+    const props = { id: 'w', version: 1, operation: 'grind_rods', made, unit: 'in' as const, raw: RAW };
+    render(<Worksheet {...props} house={house} />);
+    await bores(['2.2405', '2.2405', '2.2405', '2.2405']);
+    // .0010 below the size instead of .0005; an undersize belongs to the job and is never a default.
+    expect(screen.getAllByText(/2\.2375/).length).toBeGreaterThan(0);
+    expect(screen.getAllByText('your shop’s default')).toHaveLength(1);
   });
 });

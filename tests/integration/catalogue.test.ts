@@ -25,6 +25,8 @@ const DEFINERS = [
   ],
   ...[
     'end_sign_in',
+    'end_sign_ins_of_member',
+    'sign_in_of',
     'feed_event',
     'find_colleague_for_sign_in',
     'find_for_sign_in',

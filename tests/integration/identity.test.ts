@@ -5,9 +5,20 @@ import { linkSecret } from '@/lib/adapters/links';
 import { changePerson, isSignedIn, signIn, signOut, switchShop, tokenHash } from '@/lib/services/identity';
 import { acceptInvitation, invitePerson, readInvitation } from '@/lib/services/invitations';
 import { askForReset, setNewPassword } from '@/lib/services/password-reset';
-import { changeShop, removePerson } from '@/lib/services/shop-settings';
+import { loadShop } from '@/db/read-models/shop';
+import { changeRoles, changeShop, endSignIn, removePerson } from '@/lib/services/shop-settings';
 import { ownDatabase, readAsSuperuser } from '../support/database';
 import { buildPartner, buildPerson, buildShop, PASSWORD, ticketOf } from '../support/shops';
+
+/** Two spans from Monday to Friday, one on Saturday. */
+const WEEK = [
+  ...Array.from({ length: 5 }, () => [
+    { opens: '07:00', closes: '12:00' },
+    { opens: '13:00', closes: '16:00' },
+  ]),
+  [{ opens: '08:00', closes: '12:00' }],
+  [],
+];
 
 const own = ownDatabase();
 const at = { address: 'here', agent: 'test' };
@@ -80,17 +91,36 @@ describe('a sign-in ends on the next request', () => {
     expect(await isSignedIn(owner)).toBe(false);
   });
 
-  it('reads roles anew each time', async () => {
+  it('when its person gets other roles in the shop: they sign in anew, with those', async () => {
     const shop = await buildShop();
     const counter = await buildPerson(shop, ['counter']);
-    const roles = () => begin(counter, (_tx, actor) => Promise.resolve(actor.roles));
-    expect(await roles()).toEqual(['counter']);
-    await readAsSuperuser(
-      own.superuserUrl(),
-      `update memberships set roles = array['bench'] where roles = array['counter'] and shop_id = $1`,
-      [shop.shopId],
-    );
-    expect(await roles()).toEqual(['bench']);
+    const roles = (ticket: { tokenHash: string }) => begin(ticket, (_tx, actor) => Promise.resolve(actor));
+    const { personId, roles: before } = await roles(counter);
+    expect(before).toEqual(['counter']);
+    await expect(changeRoles(counter, personId, ['owner'])).rejects.toMatchObject({ code: 'forbidden' });
+    await changeRoles(shop.owner, personId, ['bench']);
+    await expect(roles(counter)).rejects.toMatchObject({ code: 'unauthenticated' });
+    expect((await roles(await ticketOf(counter.email))).roles).toEqual(['bench']);
+    const owner = await roles(shop.owner);
+    await expect(changeRoles(shop.owner, owner.personId, ['bench'])).rejects.toMatchObject({
+      code: 'conflict',
+    });
+    expect(await isSignedIn(shop.owner)).toBe(true);
+  });
+
+  it('when it is ended from another screen, and nobody ends another person’s', async () => {
+    const shop = await buildShop();
+    const second = await ticketOf(shop.ownerEmail);
+    const bench = await buildPerson(shop, ['bench']);
+    const listed = (ticket: { tokenHash: string }) =>
+      begin(ticket, async (tx, actor) => (await loadShop(tx, actor, ticket.tokenHash)).signIns);
+    const mine = await listed(second);
+    expect(mine.map(({ isThis }) => isThis).toSorted()).toEqual([false, true]);
+    const [theirs] = await listed(bench);
+    await expect(endSignIn(second, theirs?.id ?? '')).rejects.toMatchObject({ code: 'not_found' });
+    await endSignIn(second, mine.find(({ isThis }) => !isThis)?.id ?? '');
+    expect(await isSignedIn(shop.owner)).toBe(false);
+    expect(await isSignedIn(second)).toBe(true);
   });
 });
 
@@ -161,8 +191,7 @@ describe('settings', () => {
       name: 'New name',
       unit: 'mm' as const,
       timeZone: 'UTC',
-      opens: '07:00',
-      closes: '15:00',
+      hours: WEEK,
     };
     const bench = await buildPerson(shop, ['bench']);
     await expect(changeShop(bench, 1, wanted)).rejects.toMatchObject({ code: 'forbidden' });

@@ -23,8 +23,7 @@ describe('an inch shop and a millimetre shop', () => {
       name: 'Millimetres',
       unit: 'mm',
       timeZone: 'UTC',
-      opens: '08:00',
-      closes: '16:00',
+      hours: [],
     });
     const order = await buildDraft(['grind_rods'], { sender, partner });
     const rods = order.lineIds[0] ?? '';

@@ -46,5 +46,6 @@ export const addPartAction = action(addSchema, async ({ data: { requestKey, ...p
   await addPart(ask, requestKey, part);
   revalidatePath('/builds', 'layout');
   revalidatePath('/parts');
+  revalidatePath('/orders', 'layout');
   return { done: `Added: ${part.pieces} ${part.kind}.` };
 });

@@ -4,30 +4,44 @@ import { revalidatePath } from 'next/cache';
 import { z } from 'zod';
 import { ROLES } from '@/lib/domain/actor';
 import { action } from '@/lib/http/action';
-import { emailSchema, shopNameSchema, timeZoneSchema } from '@/lib/schemas/identity';
+import { emailSchema } from '@/lib/schemas/identity';
+import { closedDaySchema, houseSchema, rolesSchema, shopSettingsSchema } from '@/lib/schemas/shop-settings';
 import { invitePerson } from '@/lib/services/invitations';
-import { changeShop, removePerson } from '@/lib/services/shop-settings';
-
-const timeSchema = z
-  .string()
-  .trim()
-  .regex(/^([01]\d|2[0-3]):[0-5]\d$/, 'Write the time as 08:00.');
-const shopSchema = z
-  .object({
-    version: z.coerce.number().int(),
-    name: shopNameSchema,
-    unit: z.enum(['in', 'mm']),
-    timeZone: timeZoneSchema,
-    opens: timeSchema,
-    closes: timeSchema,
-  })
-  .refine(({ opens, closes }) => opens < closes, { path: ['closes'], error: 'It closes before it opens.' });
+import {
+  changeHouse,
+  changeRoles,
+  changeShop,
+  endSignIn,
+  removePerson,
+  setClosedDay,
+} from '@/lib/services/shop-settings';
 
 /** Keeps the shop's settings. */
-export const changeShopAction = action(shopSchema, async ({ data: { version, ...shop }, ask }) => {
-  await changeShop(ask, version, shop);
+export const changeShopAction = action(shopSettingsSchema, async ({ data: { version, settings }, ask }) => {
+  await changeShop(ask, version, settings);
   revalidatePath('/', 'layout');
   return { done: 'Kept.' };
+});
+
+/** Closes the shop on a day. */
+export const closeDayAction = action(closedDaySchema, async ({ data: { day, note }, ask }) => {
+  await setClosedDay(ask, day, { note });
+  revalidatePath('/settings');
+  return { done: 'Closed on that day.' };
+});
+
+/** Opens it again. */
+export const openDayAction = action(closedDaySchema.pick({ day: true }), async ({ data: { day }, ask }) => {
+  await setClosedDay(ask, day, null);
+  revalidatePath('/settings');
+  return { done: 'Open on that day.' };
+});
+
+/** Keeps the shop's own defaults for worksheets. */
+export const changeHouseAction = action(houseSchema, async ({ data: { version, house }, ask }) => {
+  await changeHouse(ask, version, house);
+  revalidatePath('/', 'layout');
+  return { done: 'Kept. Sheets say “your shop’s default” where one speaks.' };
 });
 
 const inviteSchema = z.object({
@@ -46,9 +60,27 @@ export const invitePersonAction = action(
   ['roles'],
 );
 
+/** Gives a person other roles. */
+export const changeRolesAction = action(
+  rolesSchema,
+  async ({ data: { personId, roles }, ask }) => {
+    await changeRoles(ask, personId, roles);
+    revalidatePath('/settings');
+    return { done: 'Kept. They sign in anew.' };
+  },
+  ['roles'],
+);
+
 /** Takes a person out of the shop. */
 export const removePersonAction = action(z.object({ personId: z.uuid() }), async ({ data, ask }) => {
   await removePerson(ask, data.personId);
   revalidatePath('/settings');
   return { done: 'Removed. Their sign-ins open nothing here any more.' };
+});
+
+/** Ends one of one's own sign-ins. */
+export const endSignInAction = action(z.object({ signInId: z.uuid() }), async ({ data, ask }) => {
+  await endSignIn(ask, data.signInId);
+  revalidatePath('/settings');
+  return { done: 'Ended.' };
 });

@@ -1,12 +1,18 @@
 import { randomUUID } from 'node:crypto';
-import { invitePartnerAction } from '@/app/(workspace)/shops/actions';
+import {
+  changePartnershipAction,
+  invitePartnerAction,
+  notePartnerAction,
+  remindPartnerAction,
+} from '@/app/(workspace)/shops/actions';
 import { Form, Submit } from '@/components/forms/form';
-import { TextField } from '@/components/forms/fields';
+import { TextArea, TextField } from '@/components/forms/fields';
 import { Sheet } from '@/components/ui/sheet';
 import { begin } from '@/db/client';
-import { loadPartners } from '@/db/read-models/partners';
+import { loadPartners, type PartnerRow } from '@/db/read-models/partners';
 import { requirePageTicket } from '@/lib/auth/ticket';
-import { can } from '@/lib/domain/actor';
+import { type Actor, can } from '@/lib/domain/actor';
+import { workOrderFilterSchema, workOrdersAddress } from '@/lib/schemas/work-orders';
 
 export const metadata = { title: 'Shops' };
 
@@ -42,8 +48,11 @@ export default async function ShopsPage() {
                 <span className="note">{STATES[partner.state]}</span>
                 <span className="note">measures in {partner.unit === 'in' ? 'inches' : 'millimetres'}</span>
                 <span className="note ml-auto">
-                  <span className="num">{partner.openOrders}</span> open orders
+                  <a href={workOrdersAddress({ ...OPEN, with: partner.shopId })}>
+                    <span className="num">{partner.openOrders}</span> open orders
+                  </a>
                 </span>
+                <PartnerDeeds partner={partner} actor={actor} />
               </li>
             ))}
           </ul>
@@ -67,5 +76,66 @@ export default async function ShopsPage() {
         )}
       </div>
     </main>
+  );
+}
+
+const OPEN = workOrderFilterSchema.parse({});
+
+/** What can be done about one partner, folded: the shop's own note, and whether it is worked with. */
+function PartnerDeeds({ partner, actor }: { partner: PartnerRow; actor: Actor }) {
+  const hidden = { partnerShopId: partner.shopId };
+  return (
+    <details className="w-full">
+      <summary className="cursor-pointer py-2 text-[15px]">
+        {partner.note === '' ? 'Note for ourselves, and more' : partner.note}
+      </summary>
+      <div className="grid gap-4 py-2 sm:grid-cols-[minmax(0,1fr)_auto]">
+        {can(actor, 'message') && (
+          <Form
+            action={notePartnerAction}
+            hidden={hidden}
+            className="grid gap-2"
+            label={`Note on ${partner.name}`}
+          >
+            <TextArea
+              name="text"
+              label="Note for ourselves"
+              hint="Only your own people see it."
+              defaultValue={partner.note}
+            />
+            <Submit kind="ghost">Keep the note</Submit>
+          </Form>
+        )}
+        {can(actor, 'partners') &&
+          (partner.isHere ? (
+            <Form
+              action={changePartnershipAction}
+              version={partner.version}
+              hidden={hidden}
+              className="grid content-start gap-2"
+              label={`Working with ${partner.name}`}
+            >
+              {partner.state === 'active' ? (
+                <Submit kind="ghost" name="state" value="paused">
+                  Pause
+                </Submit>
+              ) : (
+                <Submit name="state" value="active">
+                  Work together again
+                </Submit>
+              )}
+              {partner.state !== 'ended' && (
+                <Submit kind="stop" name="state" value="ended">
+                  End it
+                </Submit>
+              )}
+            </Form>
+          ) : (
+            <Form action={remindPartnerAction} hidden={hidden} label={`Write to ${partner.name}`}>
+              <Submit kind="ghost">Send the way in by e-mail</Submit>
+            </Form>
+          ))}
+      </div>
+    </details>
   );
 }

@@ -1,6 +1,4 @@
-import type { Fields, Known } from '@/lib/domain/operations/operation';
-
-const COMMON = 'common practice, no source';
+import { COMMON, type Fields, type Known } from '@/lib/domain/operations/operation';
 
 /** What boring asks. */
 export const BORE_FIELDS = {

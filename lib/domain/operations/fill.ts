@@ -95,7 +95,7 @@ function readFallback({ path, field, figures, missing }: Box): void {
     if (!field.optional) missing.push(path);
     return;
   }
-  const parsed = parseLength(field.fallback.value, 'in');
+  const parsed = parseLength(field.fallback.value, field.fallback.unit ?? 'in');
   if (parsed.ok)
     figures.set(path, {
       value: parsed.value,

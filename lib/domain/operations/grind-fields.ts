@@ -1,6 +1,4 @@
-import type { Field, Fields, Known } from '@/lib/domain/operations/operation';
-
-const COMMON = 'common practice, no source';
+import { COMMON, type Field, type Fields, type Known } from '@/lib/domain/operations/operation';
 
 /** What grinding rods and mains both ask. */
 export const SHARED_FIELDS = {

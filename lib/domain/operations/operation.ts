@@ -1,5 +1,8 @@
 import type { Made } from '@/lib/domain/builds/made';
-import type { Length } from '@/lib/domain/quantity/length';
+import type { Length, LengthUnit } from '@/lib/domain/quantity/length';
+
+/** Where a default has no printed source. */
+export const COMMON = 'common practice, no source';
 
 /** What cutting does to a feature: decides which side is still to cut. */
 export type Cutting = 'smaller' | 'bigger' | 'one_limit';
@@ -35,7 +38,8 @@ export interface Field {
   /** In inches, as text: a value further than this from the middle of its column is questioned. */
   readonly spread?: string;
   readonly choices?: readonly { readonly value: string; readonly label: string }[];
-  readonly fallback?: { readonly value: string; readonly source: string };
+  /** Read in inches unless it says otherwise. */
+  readonly fallback?: { readonly value: string; readonly source: string; readonly unit?: LengthUnit };
 }
 
 export type Fields = Readonly<Record<string, Field>>;

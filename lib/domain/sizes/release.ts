@@ -1,6 +1,7 @@
 import type { Made } from '@/lib/domain/builds/made';
 import { CATALOGUE_VERSION, operationByKey } from '@/lib/domain/operations/catalogue';
 import { fill, type Filled, type Raw } from '@/lib/domain/operations/fill';
+import { type House, withHouse } from '@/lib/domain/operations/house';
 import type { Figure, Worked } from '@/lib/domain/operations/operation';
 import type { ReleasedLine } from '@/lib/domain/orders/commands';
 import type { Length, LengthUnit } from '@/lib/domain/quantity/length';
@@ -12,13 +13,17 @@ export interface WorkedSheet {
   readonly worked: Worked | null;
 }
 
+/** What a sheet is worked out from, besides what was typed on it. */
+export interface SheetFrom {
+  readonly made: Made;
+  readonly unit: LengthUnit;
+  /** The defaults of the shop whose order it is. */
+  readonly house?: House | undefined;
+}
+
 /** Reads a worksheet and works it out; the same on the screen, in a release and for scripts. */
-export function workSheet(
-  operationKey: string,
-  raw: Raw,
-  from: { readonly made: Made; readonly unit: LengthUnit },
-): WorkedSheet {
-  const operation = operationByKey(operationKey);
+export function workSheet(operationKey: string, raw: Raw, from: SheetFrom): WorkedSheet {
+  const operation = withHouse(operationByKey(operationKey), from.house);
   const filled = fill(operation, raw, from.made, from.unit);
   const print = (value: Length) => printNear(value, from.unit);
   const worked =
@@ -30,7 +35,7 @@ export function workSheet(
 export function releasedLine(
   lineId: string,
   sheet: { readonly operation: string; readonly raw: Raw },
-  from: { readonly made: Made; readonly unit: LengthUnit },
+  from: SheetFrom,
 ): ReleasedLine | null {
   const { worked } = workSheet(sheet.operation, sheet.raw, from);
   if (!worked) return null;

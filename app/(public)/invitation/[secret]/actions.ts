@@ -9,10 +9,10 @@ import { signIn } from '@/lib/services/identity';
 import { acceptInvitation, readInvitation } from '@/lib/services/invitations';
 
 /** Accepts an invitation and signs its person in. */
-export const acceptAction = openAction(acceptSchema, async ({ secret, name, password }) => {
+export const acceptAction = openAction(acceptSchema, async ({ secret, orderId, name, password }) => {
   const invitation = await readInvitation(secret);
   await acceptInvitation(secret, { name, password, signedInId: null });
   const signedIn = invitation && (await signIn({ email: invitation.email, password, ...(await askerOf()) }));
   if (signedIn) await keepSession(signedIn);
-  redirect('/bench');
+  redirect(orderId === undefined ? '/bench' : `/orders/${orderId}`);
 });

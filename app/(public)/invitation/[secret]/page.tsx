@@ -1,3 +1,4 @@
+import { z } from 'zod';
 import { acceptAction } from '@/app/(public)/invitation/[secret]/actions';
 import { Form, Submit } from '@/components/forms/form';
 import { TextField } from '@/components/forms/fields';
@@ -6,8 +7,15 @@ import { readInvitation } from '@/lib/services/invitations';
 
 export const metadata = { title: 'Invitation' };
 
-export default async function InvitationPage({ params }: { params: Promise<{ secret: string }> }) {
+export default async function InvitationPage({
+  params,
+  searchParams,
+}: {
+  params: Promise<{ secret: string }>;
+  searchParams: Promise<{ order?: string }>;
+}) {
   const { secret } = await params;
+  const orderId = z.uuid().safeParse((await searchParams).order).data;
   const invitation = await readInvitation(secret);
   if (!invitation) {
     return (
@@ -28,7 +36,11 @@ export default async function InvitationPage({ params }: { params: Promise<{ sec
           : `${invitation.invitingShopName} sends you work orders here. Give your name and a password, and they are yours.`}
       </p>
       <Sheet note={`Your sign-in is ${invitation.email}`}>
-        <Form action={acceptAction} hidden={{ secret }} className="grid gap-4">
+        <Form
+          action={acceptAction}
+          hidden={{ secret, ...(orderId === undefined ? {} : { orderId }) }}
+          className="grid gap-4"
+        >
           <TextField
             name="name"
             label="Your name"

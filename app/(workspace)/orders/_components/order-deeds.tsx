@@ -15,6 +15,8 @@ import { SelectField, TextArea, TextField } from '@/components/forms/fields';
 import { Form, Submit } from '@/components/forms/form';
 import { Sheet } from '@/components/ui/sheet';
 import type { OrderView } from '@/db/read-models/order-page';
+import { operationByKey } from '@/lib/domain/operations/catalogue';
+import { missingBefore } from '@/lib/domain/operations/order-of-work';
 import type { CommandKind } from '@/lib/domain/orders/commands';
 
 /** What can be done to an order besides its next step: open holds and snags first, the rest folded. */
@@ -30,6 +32,15 @@ export function OrderDeeds({ view }: { view: OrderView }) {
     <>
       {may('send') && (
         <Sheet title="Send it" note="The partner sees the order from then on, and gets one e-mail.">
+          {missingBefore(facts.lines.map((line) => line.operation)).map(({ key, before }) => (
+            <p key={`${key} ${before}`} className="note mb-2">
+              ▲ {operationByKey(key).title} usually comes before {operationByKey(before).title.toLowerCase()}.
+              Put it on the order, or leave it out if it is done.
+            </p>
+          ))}
+          <a href={`/orders/${facts.id}/edit`} className="btn btn-ghost mb-3">
+            Change the draft
+          </a>
           <Form action={sendAction} {...carried()} className="mb-3" label="Send the order">
             <Submit>Send the order</Submit>
           </Form>

@@ -1,142 +1,79 @@
 import { randomUUID } from 'node:crypto';
+import { redirect } from 'next/navigation';
 import { z } from 'zod';
-import { createDraftAction } from '@/app/(workspace)/orders/new/actions';
-import { ChoiceField, SelectField, TextArea, TextField } from '@/components/forms/fields';
-import { Form, Submit } from '@/components/forms/form';
+import { BesideDraft } from '@/app/(workspace)/orders/_components/beside-draft';
+import { DraftForm } from '@/app/(workspace)/orders/_components/draft-form';
 import { Empty } from '@/components/ui/empty';
-import { Sheet } from '@/components/ui/sheet';
 import { begin } from '@/db/client';
 import { loadParts } from '@/db/read-models/builds';
-import { loadOrder } from '@/db/read-models/order-page';
+import { isThere, loadOrder, type OrderView } from '@/db/read-models/order-page';
 import { loadPartners } from '@/db/read-models/partners';
 import { requirePageTicket } from '@/lib/auth/ticket';
-import { OPERATIONS } from '@/lib/domain/operations/catalogue';
-import { needsSizes } from '@/lib/domain/operations/operation';
+import type { DraftInput } from '@/lib/schemas/order-draft';
 
 export const metadata = { title: 'New work order' };
 
-const TRANSPORT = [
-  { value: 'delivered', label: 'We bring them' },
-  { value: 'fetched', label: 'They fetch them' },
-];
-const ACCEPT = [
-  { value: 'own_check', label: 'After our own check', note: 'the parts come home first' },
-  { value: 'readings', label: 'On their readings' },
-];
-
-export default async function NewOrderPage({ searchParams }: { searchParams: Promise<{ like?: string }> }) {
-  const likeId = z.uuid().safeParse((await searchParams).like);
-  const { partners, parts, like } = await begin(await requirePageTicket(), async (tx, actor) => ({
-    // An earlier order to begin from: what was asked of whom; its parts, sizes and price stay with it.
-    like: likeId.success ? await loadOrder(tx, actor, likeId.data) : undefined,
-    partners: await loadPartners(tx, actor),
-    parts: (await loadParts(tx, actor, { limit: 300, after: null })).rows,
-  }));
+export default async function NewOrderPage({
+  searchParams,
+}: {
+  searchParams: Promise<{ like?: string; draft?: string }>;
+}) {
+  const asked = await searchParams;
+  const likeId = z.uuid().safeParse(asked.like);
+  const draftId = z.uuid().safeParse(asked.draft);
+  // The draft's id stands in the address, so that loading the page again goes on where one was.
+  if (!draftId.success)
+    redirect(`/orders/new?draft=${randomUUID()}${likeId.success ? `&like=${likeId.data}` : ''}`);
+  const { actor, partners, parts, like, isKept } = await begin(
+    await requirePageTicket(),
+    async (tx, asker) => ({
+      actor: asker,
+      // An earlier order to begin from: what was asked of whom; its parts, sizes and price stay with it.
+      like: likeId.success ? await loadOrder(tx, asker, likeId.data) : undefined,
+      isKept: await isThere(tx, draftId.data),
+      partners: await loadPartners(tx, asker),
+      parts: (await loadParts(tx, asker, { limit: 300, after: null })).rows,
+    }),
+  );
+  if (isKept) redirect(`/orders/${draftId.data}/edit`);
   const atHome = parts.filter((part) => part.where.some(({ place }) => place === 'home'));
   const shops = partners.filter(({ state }) => state === 'active' || state === 'invited');
   return (
     <main className="page">
       <h1 className="mb-4">New work order</h1>
-      {atHome.length === 0 || shops.length === 0 ? (
-        <Empty title="First things first">
-          {atHome.length === 0 && (
-            <p>
-              Write the part down on its <a href="/builds">build</a>.
-            </p>
-          )}
-          {shops.length === 0 && (
-            <p>
-              Name the machine shop under <a href="/shops">Shops</a>. You can send it the order before it has
-              come in.
-            </p>
-          )}
-        </Empty>
-      ) : (
-        <Form
-          action={createDraftAction}
-          requestKey={randomUUID()}
-          className="grid max-w-4xl gap-5"
-          label="New work order"
-        >
-          <Sheet title="What goes where">
-            <div className="grid gap-4">
-              <SelectField
-                name="partnerShopId"
-                label="To"
-                defaultValue={like?.facts.partner?.shopId ?? ''}
-                options={[
-                  { value: '', label: 'Choose the machine shop' },
-                  ...shops.map(({ shopId, name, isHere }) => ({
-                    value: shopId,
-                    label: isHere ? name : `${name} (invited)`,
-                  })),
-                ]}
-              />
-              <ChoiceField
-                kind="checkbox"
-                name="partIds"
-                label="Parts"
-                options={atHome.map((part) => ({
-                  value: part.id,
-                  label: `${part.pieces} ${part.kind}${part.stamps.length > 0 ? `, stamp ${part.stamps.join(' ')}` : ''}`,
-                  note:
-                    part.buildNumber === null ? 'no build' : `B-${part.buildNumber} · ${part.engine ?? ''}`,
-                }))}
-              />
-              <ChoiceField
-                kind="checkbox"
-                name="operations"
-                label="What is to be done"
-                defaultValue={like?.facts.lines.map((line) => line.operation).join('\n') ?? ''}
-                options={OPERATIONS.map((operation) => ({
-                  value: operation.key,
-                  label: operation.title,
-                  note: needsSizes(operation) ? 'needs sizes' : 'needs no sizes',
-                }))}
-              />
-            </div>
-          </Sheet>
-          <Sheet title="When and how">
-            <div className="grid gap-4 sm:grid-cols-2">
-              <TextField name="neededBackOn" label="Needed back" type="date" />
-              <TextField name="reference" label="Our reference" />
-              <ChoiceField
-                kind="radio"
-                name="transport"
-                label="How the parts travel"
-                options={TRANSPORT}
-                defaultValue="delivered"
-                className="sm:col-span-2"
-              />
-              <ChoiceField
-                kind="radio"
-                name="acceptRule"
-                label="The work is accepted"
-                options={ACCEPT}
-                defaultValue="own_check"
-                className="sm:col-span-2"
-              />
-              <TextArea
-                name="notes"
-                label="Notes for the machine shop"
-                defaultValue={like?.notes ?? ''}
-                className="sm:col-span-2"
-              />
-              <TextArea
-                name="standingInstruction"
-                label="Standing instruction"
-                defaultValue={like?.standingInstruction ?? ''}
-                hint="An answer given ahead: if it will not clean up go to .020, spend up to so much without asking, or stop and ring."
-                className="sm:col-span-2"
-              />
-            </div>
-          </Sheet>
-          <div>
-            <Submit>Keep as a draft</Submit>
-            <p className="note mt-2">Nobody else sees a draft. Its sizes and sending come next.</p>
-          </div>
-        </Form>
-      )}
+      <div className="grid items-start gap-5 xl:grid-cols-[minmax(0,1fr)_372px]">
+        {atHome.length === 0 || shops.length === 0 ? (
+          <Empty title="First things first">
+            {atHome.length === 0 && <p>Write the part down, here or on its build.</p>}
+            {shops.length === 0 && (
+              <p>Name the machine shop. You can send it the order before it has come in.</p>
+            )}
+          </Empty>
+        ) : (
+          <DraftForm
+            orderId={draftId.data}
+            version={0}
+            values={valuesLike(like)}
+            partners={shops}
+            parts={atHome}
+          />
+        )}
+        <BesideDraft actor={actor} opensParts={atHome.length === 0} opensShops={shops.length === 0} />
+      </div>
     </main>
   );
+}
+
+function valuesLike(like: OrderView | undefined): DraftInput {
+  return {
+    partnerShopId: like?.facts.partner?.shopId ?? null,
+    partIds: [],
+    operations: like?.facts.lines.map((line) => line.operation) ?? [],
+    neededBackOn: null,
+    transport: like?.transport ?? 'delivered',
+    acceptRule: like?.facts.acceptRule ?? 'own_check',
+    notes: like?.notes ?? '',
+    standingInstruction: like?.standingInstruction ?? '',
+    reference: '',
+  };
 }

@@ -33,6 +33,7 @@ export default async function SheetPage({
         made={madeOf(sheet)}
         unit={view.facts.sender.unit}
         raw={sheet.raw}
+        house={view.house}
       />
     </main>
   );
