@@ -75,6 +75,7 @@ module.exports = {
     { name: 'no-unknown-imports', severity: 'error', from: {}, to: { couldNotResolve: true } },
   ],
   options: {
+    exclude: { path: '(^|/)[.]next/' },
     doNotFollow: { path: 'node_modules' },
     tsConfig: { fileName: 'tsconfig.json' },
     tsPreCompilationDeps: true,

@@ -1,12 +1,14 @@
 'use client';
 
 import { useRouter } from 'next/navigation';
-import { useState } from 'react';
+import { useRef, useState } from 'react';
+import { Chosen, Typing } from '@/components/readings/boxes';
 import { sayJudgement } from '@/components/readings/ribbon';
 import type { Cutting } from '@/lib/domain/operations/operation';
 import { comparatorSize, type ComparatorSide, judge } from '@/lib/domain/readings/judge';
 import type { Length, LengthUnit } from '@/lib/domain/quantity/length';
 import { LENGTH_PROBLEM_WORDS, parseLength } from '@/lib/domain/quantity/parse-length';
+import { parseTemperature, TEMPERATURE_PROBLEM_WORDS } from '@/lib/domain/quantity/temperature';
 import { printNear } from '@/lib/domain/quantity/print-length';
 
 interface EntryProps {
@@ -27,8 +29,17 @@ const SIDES: readonly { value: ComparatorSide; label: string }[] = [
 
 interface Typed {
   readonly text: string;
-  readonly side: ComparatorSide;
+  /** Never chosen beforehand: a side that nobody pressed would be a guess. */
+  readonly side: ComparatorSide | null;
 }
+
+/** What the gauge reads on its setting standard once the round is done. */
+const AFTERWARDS = [
+  { value: '', label: 'Not looked at' },
+  { value: 'on', label: 'On zero' },
+  { value: 'smaller', label: 'Smaller, by' },
+  { value: 'bigger', label: 'Bigger, by' },
+] as const;
 
 /** Readings of one line, position by position, as sizes or from a comparator in words. Nothing typed is lost when sending fails. */
 export function ReadingsEntry({ orderId, lineId, unit, features, positions, stages }: EntryProps) {
@@ -39,7 +50,11 @@ export function ReadingsEntry({ orderId, lineId, unit, features, positions, stag
   const [instrument, setInstrument] = useState('');
   const [feature, setFeature] = useState(features[0]?.feature ?? '');
   const [typed, setTyped] = useState<Readonly<Record<string, Typed>>>({});
+  const [temperature, setTemperature] = useState('');
+  const [after, setAfter] = useState<{ side: string; text: string }>({ side: '', text: '' });
   const [said, setSaid] = useState('');
+  // Each reading keeps its id until the server has it: sent twice, it stands once.
+  const ids = useRef(new Map<string, string>());
   const limits = features.find((one) => one.feature === feature);
   const setting = parseLength(setTo, unit);
 
@@ -50,6 +65,7 @@ export function ReadingsEntry({ orderId, lineId, unit, features, positions, stag
       const size = parseLength(one.text, unit);
       return size.ok ? size.value : null;
     }
+    if (one.side === null) return null;
     const away = one.side === 'on' ? parseLength('0', unit) : parseLength(one.text, unit);
     return setting.ok && away.ok && away.value >= 0
       ? comparatorSize(setting.value, away.value, one.side)
@@ -63,13 +79,14 @@ export function ReadingsEntry({ orderId, lineId, unit, features, positions, stag
     setSaid('Sending …');
     const readings = filled.map((position) => ({
       ...{
-        id: crypto.randomUUID(),
+        id: idOf(ids.current, position),
         lineId,
         feature,
         position,
         unit,
         stage,
         instrument,
+        temperature,
         takenAt: new Date().toISOString(),
       },
       text: typed[position]?.text === '' ? '0' : (typed[position]?.text ?? ''),
@@ -80,13 +97,17 @@ export function ReadingsEntry({ orderId, lineId, unit, features, positions, stag
       const response = await fetch(`/api/v1/orders/${orderId}/readings`, {
         method: 'POST',
         headers: { 'content-type': 'application/json', 'idempotency-key': crypto.randomUUID() },
-        body: JSON.stringify({ readings }),
+        body: JSON.stringify({
+          readings,
+          afterwards: how === 'comparator' && after.side !== '' ? after : null,
+        }),
       });
       if (!response.ok) {
-        setSaid(((await response.json()) as { title: string }).title);
+        setSaid(sayProblem((await response.json()) as Problem));
         return;
       }
       setTyped({});
+      ids.current.clear();
       const next = features[features.findIndex((one) => one.feature === feature) + 1];
       setSaid(`${limits?.what ?? ''} ${feature}: ${readings.length} readings are kept.`);
       if (next) setFeature(next.feature);
@@ -121,6 +142,14 @@ export function ReadingsEntry({ orderId, lineId, unit, features, positions, stag
           />
         )}
         <Typing label="Instrument" value={instrument} set={setInstrument} wrong="" words />
+        <Typing
+          label="Temperature of the part"
+          value={temperature}
+          set={setTemperature}
+          wrong={wrongTemperature(temperature, unit)}
+          words
+          hint={unit === 'in' ? 'As 68 F, where it was taken' : 'As 20 C, where it was taken'}
+        />
         <Chosen
           label="Which"
           value={feature}
@@ -130,7 +159,7 @@ export function ReadingsEntry({ orderId, lineId, unit, features, positions, stag
       </div>
       <ol className="mt-3">
         {positions.map((position) => {
-          const one = typed[position] ?? { text: '', side: 'bigger' as const };
+          const one = typed[position] ?? { text: '', side: null };
           const size = read(position);
           const change = (more: Partial<Typed>) =>
             setTyped((before) => ({ ...before, [position]: { ...one, ...more } }));
@@ -170,6 +199,24 @@ export function ReadingsEntry({ orderId, lineId, unit, features, positions, stag
           );
         })}
       </ol>
+      {how === 'comparator' && (
+        <div className="mt-3 grid gap-3 sm:grid-cols-2">
+          <Chosen
+            label="The gauge afterwards, on what it was set to"
+            value={after.side}
+            set={(side) => setAfter((before) => ({ ...before, side }))}
+            options={AFTERWARDS}
+          />
+          {(after.side === 'smaller' || after.side === 'bigger') && (
+            <Typing
+              label="By how much"
+              value={after.text}
+              set={(text) => setAfter((before) => ({ ...before, text }))}
+              wrong={wrongOf(after.text, unit)}
+            />
+          )}
+        </div>
+      )}
       <p className="my-3 min-h-6 font-semibold" role="status">
         {said}
       </p>
@@ -196,50 +243,23 @@ function wrongOf(text: string, unit: LengthUnit): string {
   return parsed.ok ? '' : LENGTH_PROBLEM_WORDS[parsed.problem];
 }
 
-interface ChosenProps {
-  label: string;
-  value: string;
-  set: (value: string) => void;
-  options: readonly { value: string; label: string }[];
+function wrongTemperature(text: string, unit: LengthUnit): string {
+  if (text.trim() === '') return '';
+  const parsed = parseTemperature(text, unit === 'in' ? 'F' : 'C');
+  return parsed.ok ? '' : TEMPERATURE_PROBLEM_WORDS[parsed.problem];
 }
 
-function Chosen({ label, value, set, options }: ChosenProps) {
-  return (
-    <label className="block text-[15px] font-semibold">
-      {label}
-      <select className="box mt-1 font-normal" value={value} onChange={(chosen) => set(chosen.target.value)}>
-        {options.map((option) => (
-          <option key={option.value} value={option.value}>
-            {option.label}
-          </option>
-        ))}
-      </select>
-    </label>
-  );
+function idOf(ids: Map<string, string>, position: string): string {
+  const known = ids.get(position) ?? crypto.randomUUID();
+  ids.set(position, known);
+  return known;
 }
 
-interface TypingProps {
-  label: string;
-  value: string;
-  set: (value: string) => void;
-  wrong: string;
-  words?: true;
+interface Problem {
+  readonly title: string;
+  readonly errors?: readonly { readonly detail: string }[];
 }
 
-function Typing({ label, value, set, wrong, words }: TypingProps) {
-  return (
-    <label className="block grow text-[15px] font-semibold">
-      {label}
-      <input
-        type="text"
-        inputMode={words ? 'text' : 'decimal'}
-        autoComplete="off"
-        className={`box mt-1 font-normal ${words ? '' : 'box-size'}`}
-        value={value}
-        aria-invalid={wrong !== '' || undefined}
-        onChange={(typed) => set(typed.target.value)}
-      />
-      {wrong !== '' && <span className="mt-1 block text-sm text-past">{wrong}</span>}
-    </label>
-  );
+function sayProblem({ title, errors }: Problem): string {
+  return errors?.[0] ? `${title} ${errors[0].detail}` : title;
 }

@@ -4,10 +4,14 @@ import type { SizeFact } from '@/lib/domain/orders/facts';
 import { judge, outOfRound, type PlacedReading, taper } from '@/lib/domain/readings/judge';
 import { largest, type LengthUnit, smallest } from '@/lib/domain/quantity/length';
 import { printNear } from '@/lib/domain/quantity/print-length';
+import { printTemperature } from '@/lib/domain/quantity/temperature';
 
 interface Reading extends PlacedReading {
   readonly side: 'sender' | 'partner';
   readonly feature: string;
+  readonly marks: readonly string[];
+  readonly instrument: string;
+  readonly partMc: number | null;
 }
 
 interface ReadingsTableProps {
@@ -81,6 +85,11 @@ export function ReadingsTable({ sizes, readings, unit }: ReadingsTableProps) {
           })}
         </tbody>
       </table>
+      {notesOf(readings).map((words) => (
+        <p key={words} className="note mt-1">
+          {words}
+        </p>
+      ))}
       <p className="note mt-2 flex justify-between gap-3">
         <span>◀ smaller: {isBore ? 'still to cut' : 'past size'}</span>
         <span>● machine shop ◆ rebuilder</span>
@@ -88,4 +97,18 @@ export function ReadingsTable({ sizes, readings, unit }: ReadingsTableProps) {
       </p>
     </Scroll>
   );
+}
+
+/** What else was said with the readings: instruments, temperatures, a gauge that had moved. */
+function notesOf(readings: readonly Reading[]): string[] {
+  const said = (['partner', 'sender'] as const).flatMap((side) => {
+    const own = readings.filter((reading) => reading.side === side);
+    const words = [
+      ...new Set(own.map(({ instrument }) => instrument)),
+      ...new Set(own.map(({ partMc }) => (partMc === null ? '' : `part at ${printTemperature(partMc)}`))),
+      ...new Set(own.flatMap(({ marks }) => marks)),
+    ].filter((word) => word !== '');
+    return words.length === 0 ? [] : [`${side === 'partner' ? '●' : '◆'} ${words.join(' · ')}`];
+  });
+  return said;
 }

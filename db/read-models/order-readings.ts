@@ -18,6 +18,9 @@ export interface ReadingView {
   readonly author: string;
   readonly marks: readonly string[];
   readonly takenAt: string;
+  /** Temperature of the part, thousandths of a degree Celsius. */
+  readonly partMc: number | null;
+  readonly instrument: string;
 }
 
 export interface DecisionView {
@@ -38,7 +41,7 @@ export async function loadReadings(tx: Tx, orderId: string): Promise<OrderReadin
   const { rows } = await tx.raw<{ rows: { readings: ReadingView[]; decisions: DecisionView[] }[] }>(
     `select coalesce((select json_agg(x) from (
          select r.id, r.line_id as "lineId", s.side, r.purpose, r.stage, r.round, r.rev, r.feature, r.position, r.typed_text as "typedText",
-           r.size_nm as size, r.author_name as author, r.marks, r.taken_at as "takenAt"
+           r.size_nm as size, r.author_name as author, r.marks, r.taken_at as "takenAt", r.part_mc as "partMc", r.instrument_words as instrument
          from readings r join order_sides o on o.order_id = r.order_id and o.shop_id = app_shop()
          join lateral (select case when r.shop_id = o.shop_id then o.side when o.side = 'sender' then 'partner' else 'sender' end as side) s on true
          where r.order_id = ? and not exists (select 1 from readings c where c.replaces_id = r.id)

@@ -23,6 +23,8 @@ export interface ReadingRow {
   } | null;
   readonly size: Length;
   readonly instrument: string;
+  readonly partMc: number | null;
+  readonly temperatureText: string;
   readonly marks: readonly string[];
   readonly takenAt: string;
   readonly replacesId: string | null;
@@ -66,6 +68,8 @@ export async function insertReadings(
         },
         ...{
           instrument_words: row.instrument,
+          part_mc: row.partMc,
+          part_temperature_text: row.temperatureText,
           marks: row.marks,
           taken_at: row.takenAt,
           replaces_id: row.replacesId,

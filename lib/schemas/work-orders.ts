@@ -15,6 +15,16 @@ const keys = {
   needed: z.iso.date().or(z.literal('infinity')),
 } as const;
 
+/** What may stand in the address of the list, for programs. */
+export const WORK_ORDER_QUERY = {
+  show: z.enum(['open', 'drafts', 'ended', 'all']).default('open'),
+  find: z.string().max(80).describe('Beginnings of words: number, stamp, engine, other shop'),
+  with: z.uuid().describe('Only orders with this shop'),
+  move: z.enum(['any', 'mine', 'theirs']).default('any'),
+  sort: z.enum(['number', 'waiting', 'needed']).default('number'),
+  after: z.string().describe('Where the page before ended; taken from its `next`'),
+} as const;
+
 /** What the address of the list says; anything odd falls back to the first page of open orders. */
 export const workOrderFilterSchema = z
   .object({

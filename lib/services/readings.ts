@@ -19,6 +19,7 @@ export async function postReadings(
   ticket: Ticket,
   orderId: string,
   inputs: readonly ReadingInput[],
+  marks: readonly string[] = [],
 ): Promise<{ kept: string[] }> {
   return begin(ticket, async (tx, actor) => {
     requirePermission(actor, 'readings');
@@ -28,7 +29,7 @@ export async function postReadings(
       throw new AppError('conflict', 'The parts have not been checked in yet, so nothing can be read.');
     }
     const isSender = facts.sender.shopId === actor.shopId;
-    const rows = inputs.map((input) => toRow(facts, input, isSender));
+    const rows = inputs.map((input) => toRow(facts, input, { isSender, marks }));
     const kept = await insertReadings(tx, actor, orderId, rows);
     if (kept.length > 0) {
       await drawLogPlace(tx, orderId);
@@ -51,7 +52,11 @@ export async function postReadings(
   });
 }
 
-function toRow(facts: Facts, input: ReadingInput, isSender: boolean): ReadingRow {
+function toRow(
+  facts: Facts,
+  input: ReadingInput,
+  { isSender, marks }: { readonly isSender: boolean; readonly marks: readonly string[] },
+): ReadingRow {
   const line = facts.lines.find((one) => one.id === input.lineId);
   if (!line) throw new AppError('invalid', 'That line is not on this order.');
   const size = input.comparator
@@ -70,6 +75,8 @@ function toRow(facts: Facts, input: ReadingInput, isSender: boolean): ReadingRow
       comparator: input.comparator,
       size,
       instrument: input.instrument,
+      partMc: input.partMc,
+      temperatureText: input.temperatureText,
       replacesId: input.replacesId,
     },
     ...{ purpose: isSender ? 'check' : input.stage === 'found' ? 'found' : 'cut', stage: input.stage },
@@ -77,7 +84,7 @@ function toRow(facts: Facts, input: ReadingInput, isSender: boolean): ReadingRow
       round: facts.round,
       rev: facts.latestRev,
       takenAt: input.takenAt,
-      marks: line.stopDue ? ['while stopped'] : [],
+      marks: [...(line.stopDue ? ['while stopped'] : []), ...marks],
     },
   };
 }

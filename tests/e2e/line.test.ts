@@ -81,7 +81,18 @@ describe('a whole work order in two browsers', () => {
     await page.getByLabel('To', { exact: true }).selectOption({ label: 'Tamsin Crank Grinding' });
     await page.getByRole('checkbox', { name: /stamp C230/ }).check();
     await page.getByRole('checkbox', { name: /^Grind rod journals/ }).check();
-    await page.getByRole('button', { name: 'Keep as a draft' }).click();
+    // What was chosen is kept without a press: the page loaded again goes on where one was.
+    await page.getByText('Kept as you type.').waitFor();
+    await page.getByLabel('Notes for the machine shop').fill('Long snout: mind the nose.');
+    await page.getByText('Keeping …').waitFor();
+    await page.getByText('Kept as you type.').waitFor();
+    await page.reload();
+    await page.waitForURL(/\/orders\/[0-9a-f-]{36}\/edit$/);
+    expect(await page.getByLabel('Notes for the machine shop').inputValue()).toBe(
+      'Long snout: mind the nose.',
+    );
+    expect(await page.getByRole('checkbox', { name: /stamp C230/ }).isChecked()).toBe(true);
+    await page.getByRole('button', { name: 'Go on to sizes and sending' }).click();
     await page.waitForURL(/\/orders\/[0-9a-f-]{36}\/sizes$/);
     order = new URL(page.url()).pathname.replace('/sizes', '');
     const draft = await partner.page.goto(order);
@@ -101,6 +112,7 @@ describe('a whole work order in two browsers', () => {
     await page.getByText('Kept as you type').waitFor();
     expect(await axeViolations(page)).toEqual([]);
     await page.getByRole('link', { name: 'Back to the order' }).click();
+    await page.getByText('Crack test usually comes before grind rod journals.').waitFor();
     await page.getByRole('button', { name: 'Send the order' }).click();
     await tagSays(page, 'Their move: name a price.');
     await mailTo('owner@grinding.example', /Name a price/);

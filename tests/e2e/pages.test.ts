@@ -26,89 +26,102 @@ const ORDER = demoId('order being cut');
 const DRAFT = demoId('order a draft');
 const BUILD = demoId('build six');
 
+const OURS: readonly Asker[] = ['sender', 'bench', 'counter'];
+const PARTIES: readonly Asker[] = [...OURS, 'partner', 'partnerBench', 'partnerCounter'];
+const SIGNED_IN: readonly Asker[] = [...PARTIES, 'otherPartner'];
+const ANYBODY: readonly Asker[] = [...SIGNED_IN, 'nobody'];
+const OWNERS: readonly Asker[] = ['sender', 'partner', 'otherPartner'];
+
 /** Every page of the product with an address that shows it, and who may: anything not listed here fails. */
 const PAGES: Readonly<Record<string, { readonly at: string; readonly opens: readonly Asker[] }>> = {
-  'page.tsx': { at: '/', opens: ['sender', 'counter', 'partner', 'stranger'] },
+  'page.tsx': { at: '/', opens: SIGNED_IN },
   '(public)/sign-in/page.tsx': {
     at: '/sign-in',
-    opens: ['nobody', 'sender', 'counter', 'partner', 'stranger'],
+    opens: ANYBODY,
   },
   '(public)/new-shop/page.tsx': {
     at: '/new-shop',
-    opens: ['nobody', 'sender', 'counter', 'partner', 'stranger'],
+    opens: ANYBODY,
   },
   '(public)/new-password/page.tsx': {
     at: '/new-password',
-    opens: ['nobody', 'sender', 'counter', 'partner', 'stranger'],
+    opens: ANYBODY,
   },
   '(public)/new-password/[secret]/page.tsx': {
     at: '/new-password/none-of-that-kind-here',
-    opens: ['nobody', 'sender', 'counter', 'partner', 'stranger'],
+    opens: ANYBODY,
   },
   '(public)/invitation/[secret]/page.tsx': {
     at: '/invitation/none-of-that-kind-here',
-    opens: ['nobody', 'sender', 'counter', 'partner', 'stranger'],
+    opens: ANYBODY,
   },
-  '(workspace)/bench/page.tsx': { at: '/bench', opens: ['sender', 'counter', 'partner', 'stranger'] },
-  '(workspace)/builds/page.tsx': { at: '/builds', opens: ['sender', 'counter', 'partner', 'stranger'] },
+  '(workspace)/bench/page.tsx': { at: '/bench', opens: SIGNED_IN },
+  '(workspace)/builds/page.tsx': { at: '/builds', opens: SIGNED_IN },
   '(workspace)/builds/new/page.tsx': {
     at: '/builds/new',
-    opens: ['sender', 'counter', 'partner', 'stranger'],
+    opens: SIGNED_IN,
   },
-  '(workspace)/builds/[buildId]/page.tsx': { at: `/builds/${BUILD}`, opens: ['sender', 'counter'] },
+  '(workspace)/builds/[buildId]/page.tsx': { at: `/builds/${BUILD}`, opens: OURS },
   '(workspace)/orders/page.tsx': {
     at: '/orders?show=all',
-    opens: ['sender', 'counter', 'partner', 'stranger'],
+    opens: SIGNED_IN,
   },
   '(workspace)/orders/new/page.tsx': {
     at: '/orders/new',
-    opens: ['sender', 'counter', 'partner', 'stranger'],
+    opens: SIGNED_IN,
+  },
+  '(workspace)/orders/[orderId]/edit/page.tsx': {
+    at: `/orders/${DRAFT}/edit`,
+    opens: OURS,
   },
   '(workspace)/orders/[orderId]/page.tsx': {
     at: `/orders/${ORDER}`,
-    opens: ['sender', 'counter', 'partner'],
+    opens: PARTIES,
   },
   '(workspace)/orders/[orderId]/sizes/page.tsx': {
     at: `/orders/${ORDER}/sizes`,
-    opens: ['sender', 'counter', 'partner'],
+    opens: PARTIES,
   },
   '(workspace)/orders/[orderId]/readings/page.tsx': {
     at: `/orders/${ORDER}/readings`,
-    opens: ['sender', 'counter', 'partner'],
+    opens: PARTIES,
   },
   '(workspace)/orders/[orderId]/parts/page.tsx': {
     at: `/orders/${ORDER}/parts`,
-    opens: ['sender', 'counter', 'partner'],
+    opens: PARTIES,
   },
   '(workspace)/orders/[orderId]/price/page.tsx': {
     at: `/orders/${ORDER}/price`,
-    opens: ['sender', 'counter', 'partner'],
+    opens: PARTIES,
   },
   '(workspace)/orders/[orderId]/papers/page.tsx': {
     at: `/orders/${ORDER}/papers`,
-    opens: ['sender', 'counter', 'partner'],
+    opens: PARTIES,
   },
   '(workspace)/orders/[orderId]/history/page.tsx': {
     at: `/orders/${ORDER}/history`,
-    opens: ['sender', 'counter', 'partner'],
+    opens: PARTIES,
   },
   '(workspace)/orders/[orderId]/sheets/[sheetId]/page.tsx': {
     at: `/orders/${ORDER}/sheets/${ORDER}`,
     opens: [],
   },
-  '(workspace)/shops/page.tsx': { at: '/shops', opens: ['sender', 'counter', 'partner', 'stranger'] },
-  '(workspace)/parts/page.tsx': { at: '/parts', opens: ['sender', 'counter', 'partner', 'stranger'] },
-  '(workspace)/settings/page.tsx': { at: '/settings', opens: ['sender', 'counter', 'partner', 'stranger'] },
-  '(workspace)/turnaround/page.tsx': { at: '/turnaround', opens: ['sender', 'partner', 'stranger'] },
-  'print/order/[orderId]/page.tsx': { at: `/print/order/${ORDER}`, opens: ['sender', 'counter', 'partner'] },
-  'print/tag/[orderId]/page.tsx': { at: `/print/tag/${ORDER}`, opens: ['sender', 'counter', 'partner'] },
+  '(workspace)/shops/page.tsx': { at: '/shops', opens: SIGNED_IN },
+  '(workspace)/parts/page.tsx': { at: '/parts', opens: SIGNED_IN },
+  '(workspace)/settings/page.tsx': { at: '/settings', opens: SIGNED_IN },
+  '(workspace)/turnaround/page.tsx': { at: '/turnaround', opens: OWNERS },
+  'print/order/[orderId]/page.tsx': { at: `/print/order/${ORDER}`, opens: PARTIES },
+  'print/tag/[orderId]/page.tsx': { at: `/print/tag/${ORDER}`, opens: PARTIES },
 };
 
 const ASKERS = {
   sender: 'owner@works.example',
+  bench: 'bench@works.example',
   counter: 'counter@works.example',
   partner: 'owner@grinding.example',
-  stranger: 'owner@rods.example',
+  partnerBench: 'bench@grinding.example',
+  partnerCounter: 'counter@grinding.example',
+  otherPartner: 'owner@rods.example',
   nobody: null,
 } as const;
 type Asker = keyof typeof ASKERS;
@@ -151,7 +164,7 @@ describe('who may open which page', () => {
 
   it('keeps a draft from its partner, on every tab', async () => {
     const { context, page } = await seatOf('partner');
-    for (const tab of ['', '/sizes', '/readings', '/parts', '/price', '/papers', '/history']) {
+    for (const tab of ['', '/edit', '/sizes', '/readings', '/parts', '/price', '/papers', '/history']) {
       expect((await page.goto(`/orders/${DRAFT}${tab}`))?.status()).toBe(404);
     }
     await context.close();
@@ -168,7 +181,15 @@ describe.each([
     const { context, page, faults } = await seatOf('sender', look);
     const found: string[] = [];
     for (const { at, opens } of Object.values(PAGES).filter((one) => one.opens.includes('sender'))) {
-      if (opens.includes('nobody') || at.startsWith('/print/tag')) continue;
+      if (opens.includes('nobody')) continue;
+      await page.goto(at);
+      for (const violation of await axeViolations(page)) found.push(`${at}: ${violation}`);
+      const over = await page.evaluate(() => document.documentElement.scrollWidth - window.innerWidth);
+      if (over > 0) found.push(`${at} is ${over} px too wide`);
+    }
+    await context.clearCookies();
+    if (look.night) await context.addCookies([{ name: 'shift', value: 'night', url: inject('web') }]);
+    for (const { at } of Object.values(PAGES).filter((one) => one.opens.includes('nobody'))) {
       await page.goto(at);
       for (const violation of await axeViolations(page)) found.push(`${at}: ${violation}`);
       const over = await page.evaluate(() => document.documentElement.scrollWidth - window.innerWidth);

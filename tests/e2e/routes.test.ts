@@ -1,72 +1,115 @@
 import { readdirSync, readFileSync } from 'node:fs';
 import path from 'node:path';
-import type { Browser, BrowserContext } from 'playwright-core';
+import type { Browser } from 'playwright-core';
+import { z } from 'zod';
 import { afterAll, beforeAll, describe, expect, inject, it } from 'vitest';
 import { demoId } from '@/lib/demo/cast';
 import { DEMO_PASSWORD } from '@/lib/demo/sign-ins';
+import { orderAnswer, readingsAnswer, seenAnswer, workOrdersAnswer } from '@/lib/schemas/api';
 import { launchBrowser, signIn, takeSeat } from '../support/browser';
 
 const ORDER = demoId('order being cut');
+const DRAFT = demoId('order a draft');
 const KEY = 'a-key-for-this-test';
+const DRAFT_BODY = {
+  ...{ partnerShopId: '', partIds: [], operations: [], neededBackOn: '', transport: 'delivered' },
+  ...{ acceptRule: 'own_check', notes: '', standingInstruction: '', reference: '' },
+};
+
+/** Who asks: each role of the sender and of its partner, another partner of the sender, and a shop that knows neither. */
+const ASKERS = {
+  ownOwner: 'owner@works.example',
+  ownBench: 'bench@works.example',
+  ownCounter: 'counter@works.example',
+  partnerOwner: 'owner@grinding.example',
+  partnerBench: 'bench@grinding.example',
+  partnerCounter: 'counter@grinding.example',
+  otherPartner: 'owner@rods.example',
+  stranger: 'owner@stranger.example',
+} as const;
+type Asker = keyof typeof ASKERS;
+type Answers = Readonly<Record<Asker, number>>;
+
+const everybody = (code: number): Answers => ({
+  ...{ ownOwner: code, ownBench: code, ownCounter: code },
+  ...{ partnerOwner: code, partnerBench: code, partnerCounter: code },
+  ...{ otherPartner: code, stranger: code },
+});
+/** The parties of the order get one answer, everybody else hears that there is no such thing. */
+const parties = (code: number): Answers => ({ ...everybody(code), otherPartner: 404, stranger: 404 });
 
 interface Route {
   readonly file: string;
   readonly method: 'GET' | 'POST' | 'PUT';
   readonly at: string;
-  /** What answers a stranger who asks soundly. */
-  readonly stranger: number;
+  readonly answers: Answers;
   readonly body?: unknown;
   readonly headers?: Readonly<Record<string, string>>;
+  /** What a sound answer to the owner must look like, exactly. */
+  readonly shape?: z.ZodType;
+  /** Answered to nobody too. */
+  readonly isOpen?: true;
 }
+
+const READING = {
+  ...{ id: ORDER, lineId: ORDER, feature: '1', position: 'x', unit: 'in', stage: 'cut', text: '2.1150' },
+  takenAt: '2026-12-01T08:00:00Z',
+};
 
 /** Every route handler of our own; next-auth's are next-auth's. Anything not listed here fails. */
 const ROUTES: readonly Route[] = [
-  { file: 'api/health/route.ts', method: 'GET', at: '/api/health', stranger: 200 },
-  { file: 'api/v1/feed/route.ts', method: 'GET', at: '/api/v1/feed', stranger: 200 },
-  { file: 'api/v1/files/route.ts', method: 'POST', at: '/api/v1/files', stranger: 422 },
-  { file: 'api/v1/files/[fileId]/route.ts', method: 'GET', at: `/api/v1/files/${ORDER}`, stranger: 404 },
   {
-    file: 'api/v1/orders/[orderId]/readings/route.ts',
-    method: 'GET',
-    at: `/api/v1/orders/${ORDER}/readings`,
-    stranger: 404,
-  },
-  {
-    file: 'api/v1/orders/[orderId]/readings/route.ts',
     ...{
-      method: 'POST',
-      at: `/api/v1/orders/${ORDER}/readings`,
-      stranger: 404,
-      headers: { 'idempotency-key': KEY },
-    },
-    body: {
-      readings: [
-        {
-          id: ORDER,
-          lineId: ORDER,
-          feature: '1',
-          position: 'x',
-          unit: 'in',
-          stage: 'cut',
-          text: '2.1150',
-          takenAt: '2026-12-01T08:00:00Z',
-        },
-      ],
+      file: 'api/health/route.ts',
+      method: 'GET',
+      at: '/api/health',
+      answers: everybody(200),
+      isOpen: true,
     },
   },
   {
-    file: 'api/v1/orders/[orderId]/seen/route.ts',
-    ...{ method: 'PUT', at: `/api/v1/orders/${ORDER}/seen`, stranger: 404, body: { seq: 1 } },
+    ...{ file: 'api/v1/openapi.json/route.ts', method: 'GET', at: '/api/v1/openapi.json' },
+    ...{ answers: everybody(200), isOpen: true },
+  },
+  { file: 'api/v1/feed/route.ts', method: 'GET', at: '/api/v1/feed', answers: everybody(200) },
+  { file: 'api/v1/files/route.ts', method: 'POST', at: '/api/v1/files', answers: everybody(422) },
+  {
+    ...{ file: 'api/v1/files/[fileId]/route.ts', method: 'GET', at: `/api/v1/files/${ORDER}` },
+    answers: everybody(404),
   },
   {
-    file: 'api/v1/worksheets/[worksheetId]/route.ts',
-    ...{
-      method: 'PUT',
-      at: `/api/v1/worksheets/${ORDER}`,
-      stranger: 404,
-      headers: { 'if-match': '"1"' },
-      body: { raw: {} },
-    },
+    ...{ file: 'api/v1/work-orders/route.ts', method: 'GET', at: '/api/v1/work-orders?show=all&sort=needed' },
+    ...{ answers: everybody(200), shape: workOrdersAnswer },
+  },
+  {
+    ...{ file: 'api/v1/orders/[orderId]/route.ts', method: 'GET', at: `/api/v1/orders/${ORDER}` },
+    ...{ answers: parties(200), shape: orderAnswer },
+  },
+  {
+    ...{ file: 'api/v1/orders/[orderId]/readings/route.ts', method: 'GET' },
+    ...{ at: `/api/v1/orders/${ORDER}/readings`, answers: parties(200), shape: readingsAnswer },
+  },
+  {
+    ...{ file: 'api/v1/orders/[orderId]/readings/route.ts', method: 'POST' },
+    ...{ at: `/api/v1/orders/${ORDER}/readings`, headers: { 'idempotency-key': KEY } },
+    body: { readings: [READING] },
+    // A line that is not on the order; the counter takes no readings at all, whosever order it is.
+    answers: { ...parties(422), ownCounter: 403, partnerCounter: 403 },
+  },
+  {
+    ...{ file: 'api/v1/orders/[orderId]/seen/route.ts', method: 'PUT', at: `/api/v1/orders/${ORDER}/seen` },
+    ...{ body: { seq: 1 }, answers: parties(200), shape: seenAnswer },
+  },
+  {
+    ...{ file: 'api/v1/drafts/[orderId]/route.ts', method: 'PUT', at: `/api/v1/drafts/${DRAFT}` },
+    ...{ headers: { 'if-match': '"999"' }, body: DRAFT_BODY },
+    // A version nobody has seen: stale for the draft's own shop, no such draft for everybody else.
+    answers: { ...everybody(404), ownOwner: 412, ownBench: 412, ownCounter: 412 },
+  },
+  {
+    ...{ file: 'api/v1/worksheets/[worksheetId]/route.ts', method: 'PUT', at: `/api/v1/worksheets/${ORDER}` },
+    ...{ headers: { 'if-match': '"1"' }, body: { raw: {} } },
+    answers: { ...everybody(404), ownCounter: 403, partnerCounter: 403 },
   },
 ];
 
@@ -83,39 +126,57 @@ function handlersIn(folder: string, below = ''): string[] {
 }
 
 let browser: Browser;
-let stranger: BrowserContext;
-let cookie = '';
+const cookies = new Map<Asker, string>();
 beforeAll(async () => {
   browser = await launchBrowser();
-  const seat = await takeSeat(browser, { origin: inject('web') });
-  await signIn(seat.page, 'owner@rods.example', DEMO_PASSWORD);
-  stranger = seat.context;
-  cookie = (await stranger.cookies()).map(({ name, value }) => `${name}=${value}`).join('; ');
+  await openStrangers();
+  for (const [asker, email] of Object.entries(ASKERS)) {
+    const seat = await takeSeat(browser, { origin: inject('web') });
+    await signIn(seat.page, email, DEMO_PASSWORD);
+    const own = (await seat.context.cookies()).map(({ name, value }) => `${name}=${value}`).join('; ');
+    cookies.set(asker as Asker, own);
+    await seat.context.close();
+  }
 });
 afterAll(() => browser.close());
 
+/** A shop that works with nobody here, opened through the front door. */
+async function openStrangers(): Promise<void> {
+  const { page, context } = await takeSeat(browser, { origin: inject('web') });
+  await page.goto('/new-shop');
+  await page.getByLabel('Name of the shop').fill('Strangers');
+  await page.getByLabel('Your name').fill('A. Stranger');
+  await page.getByLabel('E-mail').fill(ASKERS.stranger);
+  await page.getByLabel('Password').fill(DEMO_PASSWORD);
+  await page.getByRole('button', { name: 'Open the shop' }).click();
+  await page.waitForURL(/\/bench$/);
+  await context.close();
+}
+
 interface Asking {
-  readonly signedIn: boolean;
+  readonly by: Asker | null;
   readonly headers?: Readonly<Record<string, string>>;
   readonly body?: string;
 }
 
-async function ask(route: Route, { signedIn, headers = {}, body }: Asking): Promise<number> {
-  const stop = new AbortController();
+async function answerTo(route: Route, { by, headers = {}, body }: Asking): Promise<Response> {
   const sent = body ?? (route.body === undefined ? undefined : JSON.stringify(route.body));
-  const answer = await fetch(`${inject('web')}${route.at}`, {
+  return fetch(`${inject('web')}${route.at}`, {
     method: route.method,
     redirect: 'manual',
-    signal: stop.signal,
     headers: {
-      ...(signedIn ? { cookie } : {}),
+      ...(by === null ? {} : { cookie: cookies.get(by) ?? '' }),
       ...(sent === undefined ? {} : { 'content-type': 'application/json' }),
       ...route.headers,
       ...headers,
     },
     ...(sent === undefined ? {} : { body: sent }),
   });
-  stop.abort();
+}
+
+async function ask(route: Route, asking: Asking): Promise<number> {
+  const answer = await answerTo(route, asking);
+  await answer.body?.cancel();
   return answer.status;
 }
 
@@ -140,29 +201,55 @@ describe('routes', () => {
         { origin: 'null' },
         {},
       ];
-      for (const headers of foreign) expect(await ask(route, { signedIn: true, headers })).toBe(403);
+      for (const headers of foreign) expect(await ask(route, { by: 'ownOwner', headers })).toBe(403);
     },
   );
 
-  it.each(ROUTES.filter(({ at }) => at !== '/api/health'))(
+  it.each(ROUTES.filter(({ isOpen }) => isOpen !== true))(
     '$method $at answers nobody with 401',
     async (route) => {
-      expect(await ask(route, { signedIn: false, headers: OWN })).toBe(401);
+      expect(await ask(route, { by: null, headers: OWN })).toBe(401);
     },
   );
 
-  it.each(ROUTES)('$method $at shows a stranger nothing of the order', async (route) => {
-    expect(await ask(route, { signedIn: true, headers: OWN })).toBe(route.stranger);
+  it.each(ROUTES)('$method $at answers each role of each shop as it should', async (route) => {
+    const found: Partial<Record<Asker, number>> = {};
+    for (const by of Object.keys(ASKERS) as Asker[]) found[by] = await ask(route, { by, headers: OWN });
+    expect(found).toEqual(route.answers);
+  });
+
+  it.each(ROUTES.filter(({ shape }) => shape !== undefined))(
+    '$method $at answers exactly what its description says',
+    async (route) => {
+      for (const by of ['ownOwner', 'partnerBench'] as const) {
+        const answer = await answerTo(route, { by, headers: OWN });
+        const checked = route.shape?.safeParse(await answer.json());
+        expect(checked?.error?.issues ?? []).toEqual([]);
+      }
+    },
+  );
+
+  it('are the operations of the OpenAPI document, no more and no fewer', async () => {
+    const answer = await fetch(`${inject('web')}/api/v1/openapi.json`);
+    const { paths } = (await answer.json()) as { paths: Record<string, Record<string, unknown>> };
+    const described = Object.entries(paths).flatMap(([at, methods]) =>
+      Object.keys(methods).map((method) => `${method.toUpperCase()} ${at}`),
+    );
+    const there = ROUTES.map(
+      ({ method, file }) => `${method} /${file.replace('/route.ts', '').replaceAll(/\[(\w+)\]/g, '{$1}')}`,
+    );
+    expect(described.toSorted()).toEqual([...new Set(there)].toSorted());
   });
 
   it('ask for the key of a POST and the version of a PUT, and take JSON only', async () => {
-    const [post, put] = [ROUTES[5], ROUTES[6]];
+    const post = ROUTES.find(({ method, at }) => method === 'POST' && at.endsWith('/readings'));
+    const put = ROUTES.find(({ at }) => at.startsWith('/api/v1/worksheets'));
     if (!post || !put) throw new Error('The list has changed');
-    expect(await ask(post, { signedIn: true, headers: { ...OWN, 'idempotency-key': '' } })).toBe(422);
-    expect(await ask(put, { signedIn: true, headers: { ...OWN, 'if-match': '' } })).toBe(428);
-    expect(await ask(put, { signedIn: true, headers: OWN, body: '{' })).toBe(422);
-    expect(await ask(put, { signedIn: true, headers: { ...OWN, 'content-type': 'text/plain' } })).toBe(422);
-    expect(await ask(put, { signedIn: true, headers: OWN, body: '{"raw":{},"shop_id":"x"}' })).toBe(422);
+    expect(await ask(post, { by: 'ownOwner', headers: { ...OWN, 'idempotency-key': '' } })).toBe(422);
+    expect(await ask(put, { by: 'ownOwner', headers: { ...OWN, 'if-match': '' } })).toBe(428);
+    expect(await ask(put, { by: 'ownOwner', headers: OWN, body: '{' })).toBe(422);
+    expect(await ask(put, { by: 'ownOwner', headers: { ...OWN, 'content-type': 'text/plain' } })).toBe(422);
+    expect(await ask(put, { by: 'ownOwner', headers: OWN, body: '{"raw":{},"shop_id":"x"}' })).toBe(422);
   });
 
   it('carry the headers that keep a page to itself', async () => {

@@ -1,6 +1,8 @@
 import { randomUUID } from 'node:crypto';
 import { beforeAll, describe, expect, it } from 'vitest';
 import { runOrderCommand } from '@/lib/services/order-commands';
+import { readingsSchema } from '@/lib/schemas/readings';
+import { postReadings } from '@/lib/services/readings';
 import { checkLogs } from '@/lib/services/log-check';
 import { readAsSuperuser, ownDatabase } from '../support/database';
 import {
@@ -15,6 +17,7 @@ import {
   type TestOrder,
 } from '../support/orders';
 import { buildShop } from '../support/shops';
+import { inches } from '../support/worksheet';
 
 const database = ownDatabase();
 
@@ -137,6 +140,46 @@ describe('a whole work order', () => {
       [order.partner.shopId],
     );
     expect(feed.map(({ seq }) => seq)).toEqual(feed.map((_row, index) => index + 1));
+  });
+});
+
+describe('readings', () => {
+  it('keep the part’s temperature as typed and as read, the instrument, and a gauge that had moved, each once', async () => {
+    const order = await buildDraft();
+    await makeClear(order);
+    const rods = order.lineIds[1] ?? '';
+    const reading = {
+      ...{ id: randomUUID(), lineId: rods, feature: '1', position: 'A', unit: 'in', stage: 'finished' },
+      ...{ text: '2 tenths', setToText: '1.8850', side: 'smaller', instrument: 'bench comparator' },
+      ...{ temperature: '70', takenAt: new Date().toISOString() },
+    };
+    const batch = (more: object) =>
+      readingsSchema.safeParse({
+        readings: [reading],
+        afterwards: { side: 'bigger', text: '1 tenth' },
+        ...more,
+      });
+    const parsed = batch({}).data;
+    if (!parsed) throw new Error('The batch was refused');
+    const post = () => postReadings(order.partner.owner, order.id, parsed.readings, parsed.marks);
+    expect(await post()).toEqual({ kept: [reading.id] });
+    expect(await post()).toEqual({ kept: [] });
+    expect(
+      await readAsSuperuser(
+        database.superuserUrl(),
+        'select part_temperature_text, part_mc, instrument_words, marks, size_nm from readings where order_id = $1',
+        [order.id],
+      ),
+    ).toEqual([
+      {
+        ...{ part_temperature_text: '70', part_mc: 21_111, instrument_words: 'bench comparator' },
+        ...{ marks: ['gauge 1 tenth bigger afterwards'], size_nm: inches('1.8848') },
+      },
+    ]);
+    const refused = (more: object) => batch(more).error?.issues.map(({ path }) => path.join('.'));
+    expect(refused({ readings: [{ ...reading, temperature: 'warm' }] })).toEqual(['readings.0.temperature']);
+    expect(refused({ afterwards: { side: 'smaller', text: '' } })).toEqual(['afterwards.text']);
+    expect(refused({ readings: [{ ...reading, text: '-2 tenths' }] })).toEqual(['readings.0.text']);
   });
 });
 

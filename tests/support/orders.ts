@@ -181,6 +181,7 @@ export async function fullOrder(shops?: { sender: TestShop; partner: TestShop })
     {
       ...{ id: randomUUID(), lineId: rods, feature: '1', position: 'A', stage: 'finished', unit: 'in' },
       ...{ typedText: '1.8848', comparator: null, size: inches('1.8848'), instrument: '' },
+      ...{ partMc: null, temperatureText: '' },
       ...{ takenAt: new Date().toISOString(), replacesId: null },
     },
   ]);

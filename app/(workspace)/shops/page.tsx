@@ -48,7 +48,10 @@ export default async function ShopsPage() {
                 <span className="note">{STATES[partner.state]}</span>
                 <span className="note">measures in {partner.unit === 'in' ? 'inches' : 'millimetres'}</span>
                 <span className="note ml-auto">
-                  <a href={workOrdersAddress({ ...OPEN, with: partner.shopId })}>
+                  <a
+                    href={workOrdersAddress({ ...OPEN, with: partner.shopId })}
+                    className="inline-block min-h-6 py-1"
+                  >
                     <span className="num">{partner.openOrders}</span> open orders
                   </a>
                 </span>

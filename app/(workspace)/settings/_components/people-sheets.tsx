@@ -106,7 +106,7 @@ export function SignInsSheet({ signIns, timeZone }: { signIns: ShopView['signIns
               <Form
                 action={endSignInAction}
                 hidden={{ signInId: one.id }}
-                label={`End ${sayDevice(one.agent)}`}
+                label={`End ${sayDevice(one.agent)}, last seen ${sayMoment(one.seenAt, timeZone)}, ${one.id.slice(-4)}`}
               >
                 <Submit kind="ghost">End it</Submit>
               </Form>

@@ -23,5 +23,5 @@ export const POST = route({
   params,
   body: readingsSchema,
   handle: async ({ ticket, params: { orderId }, body }) =>
-    answerJson(await postReadings(ticket, orderId, body.readings), { status: 201 }),
+    answerJson(await postReadings(ticket, orderId, body.readings, body.marks), { status: 201 }),
 });
