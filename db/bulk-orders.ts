@@ -19,6 +19,7 @@ const TABLES = [
   'quote_lines',
   'quote_answers',
   'custody_moves',
+  'restamps',
   'snags',
   'snag_answers',
   'holds',

@@ -100,7 +100,8 @@ export async function loadOrder(tx: Tx, actor: Actor, orderId: string): Promise<
 const THREAD = `select e.seq, e.type, e.payload, e.author_name as author, s.name as "shopName", e.side, e.occurred_at as at, m.body,
     coalesce(e.person_id = app_person(), false) as "isOwn",
     coalesce((select json_agg(json_build_object('id', a.id, 'name', a.name, 'isPicture', a.thumb_key is not null) order by a.at)
-      from attachments a where a.order_id = e.order_id and (a.message_id = m.id or a.move_id::text = e.payload ->> 'moveId')), '[]') as files
+      from attachments a where a.order_id = e.order_id and (a.message_id = m.id or a.move_id::text = e.payload ->> 'moveId'
+        or a.snag_id::text = e.payload ->> 'snagId' or a.restamp_id::text = e.payload ->> 'restampId')), '[]') as files
   from events e join shops s on s.id = e.shop_id left join messages m on m.event_id = e.id
   where e.order_id = o.id order by e.seq desc limit 300`;
 

@@ -43,7 +43,7 @@ export interface RepeatBackView {
 
 export interface SizesView {
   readonly revs: readonly RevView[];
-  readonly said: readonly RepeatBackView[];
+  readonly repeated: readonly RepeatBackView[];
   readonly sheets: readonly WorksheetRow[];
 }
 
@@ -61,11 +61,11 @@ export async function loadSizes(tx: Tx, orderId: string): Promise<SizesView> {
          from revs v where v.order_id = ?) x), '[]') as revs,
        coalesce((select json_agg(y order by y.at desc) from (
          select what, keyed_lower_text as "keyedLower", keyed_upper_text as "keyedUpper", matches, author_name as author, at, since
-         from repeat_backs where order_id = ?) y), '[]') as said,
+         from repeat_backs where order_id = ?) y), '[]') as repeated,
        coalesce((select json_agg(z order by z.position) from (
          select ${WORKSHEET_COLUMNS}, l.position from worksheets w join order_lines l on l.id = w.line_id
          where w.order_id = ? and l.removed_at is null) z), '[]') as sheets`,
     [orderId, orderId, orderId],
   );
-  return rows[0] ?? { revs: [], said: [], sheets: [] };
+  return rows[0] ?? { revs: [], repeated: [], sheets: [] };
 }

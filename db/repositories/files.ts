@@ -39,18 +39,34 @@ export async function insertFile(tx: Tx, actor: Actor, row: FileRow): Promise<vo
   });
 }
 
-/** Hangs one's own loose files of an order on a message or a hand-over. */
-export async function hangFiles(
-  tx: Tx,
-  actor: Actor,
-  ids: readonly string[],
-  on: { readonly orderId: string; readonly messageId?: string; readonly moveId?: string },
-): Promise<void> {
+/** What a file goes with. */
+export interface FileOwner {
+  readonly orderId: string;
+  readonly messageId?: string;
+  readonly moveId?: string;
+  readonly snagId?: string;
+  readonly restampId?: string;
+}
+
+/** Hangs one's own loose files of an order on a message, a hand-over, a snag or a restamped piece. */
+export async function hangFiles(tx: Tx, actor: Actor, ids: readonly string[], on: FileOwner): Promise<void> {
   if (ids.length === 0) return;
   await tx('attachments')
-    .where({ shop_id: actor.shopId, order_id: on.orderId, message_id: null, move_id: null })
+    .where({
+      shop_id: actor.shopId,
+      order_id: on.orderId,
+      message_id: null,
+      move_id: null,
+      snag_id: null,
+      restamp_id: null,
+    })
     .whereIn('id', [...ids])
-    .update({ message_id: on.messageId ?? null, move_id: on.moveId ?? null });
+    .update({
+      message_id: on.messageId ?? null,
+      move_id: on.moveId ?? null,
+      snag_id: on.snagId ?? null,
+      restamp_id: on.restampId ?? null,
+    });
 }
 
 /** Where a file lies, if the asker may see it. */

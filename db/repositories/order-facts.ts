@@ -60,6 +60,7 @@ select json_build_object(
   'parts', ${LIST(`select part_id as id, kind, pieces, stamps from order_parts where order_id = o.id order by kind, part_id`)},
   'moves', ${LIST(`select id, part_id as "partId", kind, pieces, stamps, kit, replaces_id as "replacesId"
     from custody_moves where order_id = o.id order by recorded_at, id`)},
+  'restamps', ${LIST(`select part_id as "partId", from_stamp as "from", to_stamp as "to" from restamps where order_id = o.id order by at, id`)},
   'quotes', ${LIST(`select q.revision, q.kind, q.total_minor as "totalMinor", q.promised_on as "promisedOn", q.promise_days as "promiseDays",
       q.valid_until as "validUntil", coalesce((select a.answer from quote_answers a where a.order_id = q.order_id and a.revision = q.revision
         order by a.at desc, a.answer = 'agree' desc limit 1), 'open') as state

@@ -169,6 +169,11 @@ const WRITERS: Writers = {
     });
   },
 
+  restamp: (writing, { id, partId, from, to, words }) =>
+    writing
+      .tx('restamps')
+      .insert({ ...author(writing), id, part_id: partId, from_stamp: from, to_stamp: to, words }),
+
   hold: (writing, { hold }) => {
     const { at, ...by } = author(writing);
     return writing.tx('holds').insert({

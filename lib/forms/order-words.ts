@@ -8,10 +8,10 @@ export function sayPunches(
   facts: Facts,
   agreedMinor: number | null,
 ): Record<'price' | 'parts' | 'sizes', string> {
-  const there = facts.parts.reduce((all, part) => all + whereabouts(part, facts.moves).partner, 0);
+  const there = facts.parts.reduce((all, part) => all + whereabouts(part, facts).partner, 0);
   const all = facts.parts.reduce((sum, part) => sum + part.pieces, 0);
   const wrong = facts.parts
-    .map((part) => piecesMissing(part, whereabouts(part, facts.moves)))
+    .map((part) => piecesMissing(part, whereabouts(part, facts)))
     .find((words) => words !== null);
   const rev = facts.latestRev;
   return {

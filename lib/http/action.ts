@@ -14,24 +14,27 @@ export function action<T>(
   handle: Handle<T, BrowserTicket>,
   lists: readonly string[] = [],
 ): FormAction {
-  return build(schema, lists, async (data) => handle({ data, ask: await requireTicket() }));
+  return build(schema, lists, requireTicket, (data, ask) => handle({ data, ask }));
 }
 
 /** Builds a server action for somebody who is not signed in. */
 export function openAction<T>(schema: z.ZodType<T>, handle: (data: T) => Promise<FormState>): FormAction {
-  return build(schema, [], handle);
+  return build(schema, [], () => Promise.resolve(null), handle);
 }
 
-function build<T>(
+/** Who asks comes before what they typed. */
+function build<T, A>(
   schema: z.ZodType<T>,
   lists: readonly string[],
-  handle: (data: T) => Promise<FormState>,
+  who: () => Promise<A>,
+  handle: (data: T, ask: A) => Promise<FormState>,
 ): FormAction {
   return async (_previous, form) => {
     const values = typed(form);
     try {
+      const ask = await who();
       const parsed = schema.safeParse(read(form, lists));
-      if (parsed.success) return await handle(parsed.data);
+      if (parsed.success) return await handle(parsed.data, ask);
       const fields: Record<string, string[]> = {};
       for (const issue of parsed.error.issues)
         (fields[String(issue.path[0] ?? '')] ??= []).push(issue.message);

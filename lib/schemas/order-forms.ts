@@ -62,6 +62,7 @@ export const snagSchema = orderFormSchema.extend({
   proposal: wordsSchema.min(1, 'Say what you propose.'),
   price: amountSchema,
   days: wholeDays,
+  files: z.array(z.uuid()).max(20),
 });
 
 export const holdSchema = orderFormSchema.extend({

@@ -1,7 +1,7 @@
 import 'server-only';
 import { begin, type Tx } from '@/db/client';
 import { loadCalendars } from '@/db/read-models/calendars';
-import { hangFiles } from '@/db/repositories/files';
+import { type FileOwner, hangFiles } from '@/db/repositories/files';
 import { once } from '@/db/repositories/idempotency';
 import { putTask, tellShop } from '@/db/repositories/notices';
 import { findFacts, lockOrder } from '@/db/repositories/order-facts';
@@ -26,7 +26,7 @@ export interface OrderCommandInput {
   readonly expectedVersion: number | null;
   readonly requestKey: string;
   readonly command: Command;
-  /** Files that go with a hand-over. */
+  /** Files that go with a hand-over, a snag or a restamped piece. */
   readonly files?: readonly string[];
 }
 
@@ -76,10 +76,20 @@ export async function commandIn(tx: Tx, actor: Actor, input: OrderCommandInput):
       );
     }
     const answer = await carryOut(tx, actor, facts, input.command);
-    const moveId = input.command.do === 'move_parts' ? input.command.parts[0]?.id : undefined;
-    if (moveId !== undefined) await hangFiles(tx, actor, input.files ?? [], { orderId: facts.id, moveId });
+    const owner = fileOwner(facts.id, input.command);
+    if (owner) await hangFiles(tx, actor, input.files ?? [], owner);
     return answer;
   });
+}
+
+/** The row that a command's files hang on. */
+function fileOwner(orderId: string, command: Command): FileOwner | undefined {
+  if (command.do === 'move_parts') {
+    const moveId = command.parts[0]?.id;
+    return moveId === undefined ? undefined : { orderId, moveId };
+  }
+  if (command.do === 'raise_snag') return { orderId, snagId: command.id };
+  return command.do === 'restamp' ? { orderId, restampId: command.id } : undefined;
 }
 
 async function takeFacts(tx: Tx, orderId: string): Promise<Facts> {

@@ -1,5 +1,6 @@
 import 'server-only';
-import { begin } from '@/db/client';
+import { begin, type Tx } from '@/db/client';
+import { loadAlreadyCut } from '@/db/read-models/already-cut';
 import {
   findWorksheet,
   findWorksheets,
@@ -8,11 +9,20 @@ import {
   type WorksheetRow,
 } from '@/db/repositories/worksheets';
 import { findHouse } from '@/db/repositories/shops';
-import type { Ticket } from '@/lib/domain/actor';
+import type { Actor, Ticket } from '@/lib/domain/actor';
 import type { Made } from '@/lib/domain/builds/made';
 import { findPreset } from '@/lib/domain/builds/presets';
+import { operationByKey } from '@/lib/domain/operations/catalogue';
+import type { House } from '@/lib/domain/operations/house';
 import type { ReleasedLine } from '@/lib/domain/orders/commands';
-import { releasedLine } from '@/lib/domain/sizes/release';
+import {
+  type CutFeature,
+  type MadeOfCut,
+  madeOfCut,
+  PAST_DECISIONS,
+  type PastDecision,
+} from '@/lib/domain/sizes/already-cut';
+import { releasedLine, workSheet } from '@/lib/domain/sizes/release';
 import { AppError } from '@/lib/errors';
 import { commandIn, type OrderCommandAnswer } from '@/lib/services/order-commands';
 import { requirePermission } from '@/lib/services/permission';
@@ -66,6 +76,8 @@ export async function releaseSizes(
     readonly expectedVersion: number;
     readonly requestKey: string;
     readonly reason: string;
+    /** What becomes of features that the new limits leave past size; needed only where there are any. */
+    readonly past?: PastDecision | undefined;
   },
 ): Promise<OrderCommandAnswer> {
   return begin(ticket, async (tx, actor) => {
@@ -82,6 +94,60 @@ export async function releaseSizes(
         );
       return line;
     });
-    return commandIn(tx, actor, { ...input, command: { do: 'release', lines, reason: input.reason } });
+    const { past, reason, ...press } = input;
+    const decided = decidePast(
+      await pastOf(tx, input.orderId, { begun, lines, unit: actor.unit, house }),
+      past,
+    );
+    const why = [reason.replace(/[.\s]+$/, ''), decided].filter((words) => words !== '').join('. ');
+    return commandIn(tx, actor, { ...press, command: { do: 'release', lines, reason: why } });
   });
+}
+
+interface Releasing {
+  readonly begun: readonly WorksheetRow[];
+  readonly lines: readonly ReleasedLine[];
+  readonly unit: Actor['unit'];
+  readonly house: House;
+}
+
+/** Features that are cut already and that the sizes about to be released leave past size. */
+async function pastOf(
+  tx: Tx,
+  orderId: string,
+  { begun, lines, unit, house }: Releasing,
+): Promise<MadeOfCut[]> {
+  const { cut } = await loadAlreadyCut(tx, orderId);
+  if (cut.length === 0) return [];
+  return lines.flatMap((line) => {
+    const sheet = begun.find(({ lineId }) => lineId === line.lineId);
+    return sheet ? previewOf(cut, sheet, { unit, house }).filter(({ is }) => is.state === 'past') : [];
+  });
+}
+
+/** What a sheet as it stands would make of what is cut already; nothing while it is not finished. */
+export function previewOf(
+  cut: readonly CutFeature[],
+  sheet: Pick<WorksheetRow, 'lineId' | 'operation' | 'raw' | 'made'>,
+  from: { readonly unit: Actor['unit']; readonly house: House },
+): readonly MadeOfCut[] {
+  const made = madeOf(sheet);
+  const line = releasedLine(sheet.lineId, sheet, { ...from, made });
+  if (!line) return [];
+  const { figures } = workSheet(sheet.operation, sheet.raw, { ...from, made }).filled;
+  return madeOfCut(cut, line, { operation: operationByKey(sheet.operation), made, figures });
+}
+
+/** Says what was decided about features past size. @throws AppError invalid when that is still open. */
+function decidePast(past: readonly MadeOfCut[], decision: PastDecision | undefined): string {
+  if (past.length === 0) return '';
+  const which = past.map(({ what, feature }) => `${what.toLowerCase()} ${feature}`).join(', ');
+  if (decision !== undefined) return `Past size at these limits: ${which}; ${PAST_DECISIONS[decision]}.`;
+  throw new AppError(
+    'invalid',
+    `Cut already, and past size at the new limits: ${which}. Decide on them first.`,
+    {
+      fields: { past: ['Decide what becomes of what is past size.'] },
+    },
+  );
 }

@@ -1,12 +1,10 @@
 import { readdirSync, readFileSync } from 'node:fs';
 import path from 'node:path';
-import type { Browser } from 'playwright-core';
-import { z } from 'zod';
-import { afterAll, beforeAll, describe, expect, inject, it } from 'vitest';
+import type { z } from 'zod';
+import { beforeAll, describe, expect, inject, it } from 'vitest';
 import { demoId } from '@/lib/demo/cast';
-import { DEMO_PASSWORD } from '@/lib/demo/sign-ins';
 import { orderAnswer, readingsAnswer, seenAnswer, workOrdersAnswer } from '@/lib/schemas/api';
-import { launchBrowser, signIn, takeSeat } from '../support/browser';
+import { ASKERS, type Asker, type PerAsker, seatEverybody } from '../support/askers';
 
 const ORDER = demoId('order being cut');
 const DRAFT = demoId('order a draft');
@@ -16,33 +14,23 @@ const DRAFT_BODY = {
   ...{ acceptRule: 'own_check', notes: '', standingInstruction: '', reference: '' },
 };
 
-/** Who asks: each role of the sender and of its partner, another partner of the sender, and a shop that knows neither. */
-const ASKERS = {
-  ownOwner: 'owner@works.example',
-  ownBench: 'bench@works.example',
-  ownCounter: 'counter@works.example',
-  partnerOwner: 'owner@grinding.example',
-  partnerBench: 'bench@grinding.example',
-  partnerCounter: 'counter@grinding.example',
-  otherPartner: 'owner@rods.example',
-  stranger: 'owner@stranger.example',
-} as const;
-type Asker = keyof typeof ASKERS;
-type Answers = Readonly<Record<Asker, number>>;
-
-const everybody = (code: number): Answers => ({
+const everybody = (code: number): PerAsker<number> => ({
   ...{ ownOwner: code, ownBench: code, ownCounter: code },
   ...{ partnerOwner: code, partnerBench: code, partnerCounter: code },
   ...{ otherPartner: code, stranger: code },
 });
 /** The parties of the order get one answer, everybody else hears that there is no such thing. */
-const parties = (code: number): Answers => ({ ...everybody(code), otherPartner: 404, stranger: 404 });
+const parties = (code: number): PerAsker<number> => ({
+  ...everybody(code),
+  otherPartner: 404,
+  stranger: 404,
+});
 
 interface Route {
   readonly file: string;
   readonly method: 'GET' | 'POST' | 'PUT';
   readonly at: string;
-  readonly answers: Answers;
+  readonly answers: PerAsker<number>;
   readonly body?: unknown;
   readonly headers?: Readonly<Record<string, string>>;
   /** What a sound answer to the owner must look like, exactly. */
@@ -120,38 +108,15 @@ function handlersIn(folder: string, below = ''): string[] {
     if (entry.name !== 'route.ts' || name.includes('[...nextauth]')) return [];
     const text = readFileSync(path.join(folder, name), 'utf8');
     return ['GET', 'POST', 'PUT', 'PATCH', 'DELETE']
-      .filter((method) => new RegExp(`export (const|async function) ${method}\\b`).test(text))
+      .filter((method) => new RegExp(`export (const|async function|function) ${method}\\b`).test(text))
       .map((method) => `${method} ${name}`);
   });
 }
 
-let browser: Browser;
-const cookies = new Map<Asker, string>();
+let cookies: ReadonlyMap<Asker, string>;
 beforeAll(async () => {
-  browser = await launchBrowser();
-  await openStrangers();
-  for (const [asker, email] of Object.entries(ASKERS)) {
-    const seat = await takeSeat(browser, { origin: inject('web') });
-    await signIn(seat.page, email, DEMO_PASSWORD);
-    const own = (await seat.context.cookies()).map(({ name, value }) => `${name}=${value}`).join('; ');
-    cookies.set(asker as Asker, own);
-    await seat.context.close();
-  }
+  cookies = await seatEverybody(inject('web'));
 });
-afterAll(() => browser.close());
-
-/** A shop that works with nobody here, opened through the front door. */
-async function openStrangers(): Promise<void> {
-  const { page, context } = await takeSeat(browser, { origin: inject('web') });
-  await page.goto('/new-shop');
-  await page.getByLabel('Name of the shop').fill('Strangers');
-  await page.getByLabel('Your name').fill('A. Stranger');
-  await page.getByLabel('E-mail').fill(ASKERS.stranger);
-  await page.getByLabel('Password').fill(DEMO_PASSWORD);
-  await page.getByRole('button', { name: 'Open the shop' }).click();
-  await page.waitForURL(/\/bench$/);
-  await context.close();
-}
 
 interface Asking {
   readonly by: Asker | null;

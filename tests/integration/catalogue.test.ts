@@ -61,6 +61,7 @@ const DEFINERS = [
     'sign_up_shop',
   ],
   ...[
+    'stamp_count',
     'start_sign_in',
     'switch_shop',
     'take_invitation',
@@ -215,6 +216,7 @@ describe('what the application can see', () => {
     'custody_moves',
     'repeat_backs',
     'readings',
+    'restamps',
     'line_decisions',
     'access_log',
   ])('keeps %s append-only, even for the owner of the tables', async (table) => {

@@ -29,6 +29,7 @@ const AUTHORED: readonly (readonly [table: string, by: Side, fresh: Row])[] = [
   ['quote_answers', 'sender', { id: randomUUID(), answer: 'ask' }],
   ['custody_moves', 'partner', { id: randomUUID() }],
   ['readings', 'partner', { id: randomUUID() }],
+  ['restamps', 'partner', { id: randomUUID() }],
   ['snags', 'partner', { id: randomUUID() }],
   ['snag_answers', 'sender', { id: randomUUID() }],
   ['holds', 'sender', { id: randomUUID() }],

@@ -53,6 +53,7 @@ export function factsOf(status: Status, over: Partial<Facts> = {}): Facts {
       lines: [WASH, RODS],
       parts: [CRANK],
       moves: [],
+      restamps: [],
       quotes: [],
       latestRev: null,
       sizes: [],

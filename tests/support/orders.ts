@@ -175,6 +175,18 @@ export async function fullOrder(shops?: { sender: TestShop; partner: TestShop })
     ...{ do: 'hold', id: holdId, lineId: null, reason: 'other', words: 'wait', waitsFor: 'sender' },
   });
   await order.act('sender', { do: 'lift_hold', holdId });
+  for (const [from, to] of [
+    ['F318', 'F319'],
+    ['F319', 'F318'],
+  ] as const)
+    await order.act('partner', {
+      do: 'restamp',
+      id: randomUUID(),
+      partId: order.partId,
+      from,
+      to,
+      words: '',
+    });
   await order.act('partner', { do: 'start', lineId: crack });
   await order.act('partner', { do: 'start', lineId: rods });
   await postReadings(order.partner.owner, order.id, [

@@ -64,6 +64,14 @@ export type Change =
       readonly sizes: readonly (KeyedSize & { since: number; asked: SizeFact; matches: boolean })[];
     }
   | { readonly row: 'move'; readonly kind: MoveKind; readonly part: MovedPart; readonly occurredAt: string }
+  | {
+      readonly row: 'restamp';
+      readonly id: string;
+      readonly partId: string;
+      readonly from: string;
+      readonly to: string;
+      readonly words: string;
+    }
   | { readonly row: 'hold'; readonly hold: HoldFact }
   | { readonly row: 'hold_set'; readonly holdId: string; readonly waitsFor?: Side; readonly lifted?: true }
   | {
@@ -169,6 +177,10 @@ const APPLY: Apply = {
         replacesId: part.replacesId,
       },
     ],
+  }),
+  restamp: (facts, { partId, from, to }) => ({
+    ...facts,
+    restamps: [...facts.restamps, { partId, from, to }],
   }),
   hold: (facts, { hold }) => ({ ...facts, holds: [...facts.holds, hold] }),
   hold_set: (facts, change) => ({

@@ -89,6 +89,14 @@ export type Command =
       readonly occurredAt: string;
     }
   | {
+      readonly do: 'restamp';
+      readonly id: string;
+      readonly partId: string;
+      readonly from: string;
+      readonly to: string;
+      readonly words: string;
+    }
+  | {
       readonly do: 'hold';
       readonly id: string;
       readonly lineId: string | null;

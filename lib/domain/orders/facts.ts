@@ -52,6 +52,13 @@ export interface MoveFact {
   readonly replacesId: string | null;
 }
 
+/** One piece that was given another stamp. */
+export interface RestampFact {
+  readonly partId: string;
+  readonly from: string;
+  readonly to: string;
+}
+
 export interface PartFact {
   readonly id: string;
   readonly kind: string;
@@ -156,6 +163,7 @@ export interface Facts {
   readonly lines: readonly LineFact[];
   readonly parts: readonly PartFact[];
   readonly moves: readonly MoveFact[];
+  readonly restamps: readonly RestampFact[];
   readonly quotes: readonly QuoteFact[];
   readonly latestRev: number | null;
   readonly sizes: readonly SizeFact[];

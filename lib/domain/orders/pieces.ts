@@ -1,4 +1,4 @@
-import type { Facts, MoveFact, PartFact } from '@/lib/domain/orders/facts';
+import type { Facts, MoveFact, PartFact, RestampFact } from '@/lib/domain/orders/facts';
 
 /** Where the pieces of one part are, as the moves say. */
 export interface Whereabouts {
@@ -17,8 +17,11 @@ export function standingMoves(moves: readonly MoveFact[]): readonly MoveFact[] {
   return moves.filter((move) => !replaced.has(move.id));
 }
 
-/** Adds the moves of one part up. */
-export function whereabouts(part: PartFact, moves: readonly MoveFact[]): Whereabouts {
+/** Adds the moves of one part up, and the stamps that were put in place of others. */
+export function whereabouts(
+  part: PartFact,
+  { moves, restamps }: Pick<Facts, 'moves' | 'restamps'>,
+): Whereabouts {
   const own = standingMoves(moves).filter((move) => move.partId === part.id);
   const sum = (kind: MoveFact['kind']) =>
     own.filter((move) => move.kind === kind).reduce((all, move) => all + move.pieces, 0);
@@ -29,7 +32,11 @@ export function whereabouts(part: PartFact, moves: readonly MoveFact[]): Whereab
     sum('received'),
   ];
   const gone = own.filter((move) => move.kind === 'sent_back').flatMap((move) => move.stamps);
-  const stampsThere = own.filter((move) => move.kind === 'checked_in').flatMap((move) => move.stamps);
+  const came = own.filter((move) => move.kind === 'checked_in').flatMap((move) => move.stamps);
+  const stampsThere = restamped(
+    came,
+    restamps.filter((one) => one.partId === part.id),
+  );
   for (const stamp of gone) {
     const at = stampsThere.indexOf(stamp);
     if (at >= 0) stampsThere.splice(at, 1);
@@ -45,6 +52,15 @@ export function whereabouts(part: PartFact, moves: readonly MoveFact[]): Whereab
         ? own.filter((move) => move.kind === 'checked_in').flatMap((move) => move.kit)
         : [],
   };
+}
+
+function restamped(stamps: readonly string[], restamps: readonly RestampFact[]): string[] {
+  const now = [...stamps];
+  for (const { from, to } of restamps) {
+    const at = now.indexOf(from);
+    if (at >= 0) now[at] = to;
+  }
+  return now;
 }
 
 /**
@@ -71,7 +87,7 @@ export function piecesMissing(part: PartFact, there: Whereabouts): string | null
 
 /** Pieces not at home, of all parts of the order. */
 export function piecesAway(facts: Facts): { partner: number; road: number; out: number; home: number } {
-  const all = facts.parts.map((part) => whereabouts(part, facts.moves));
+  const all = facts.parts.map((part) => whereabouts(part, facts));
   const sum = (pick: (where: Whereabouts) => number) => all.reduce((total, where) => total + pick(where), 0);
   return {
     partner: sum((where) => where.partner),

@@ -128,6 +128,13 @@ export const ORDER_RULES = {
     label: 'Move the parts',
     past: 'moved parts',
   },
+  restamp: {
+    side: 'partner',
+    permission: 'parts',
+    from: UNTIL_REPORTED,
+    label: 'Restamp a piece',
+    past: 'restamped a piece',
+  },
   hold: { side: 'either', permission: 'hold', from: UNTIL_REPORTED, label: 'Hold', past: 'put a hold on' },
   answer_hold: {
     side: 'either',

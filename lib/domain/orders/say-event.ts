@@ -35,6 +35,8 @@ const SAYINGS: Readonly<Record<string, Say>> = {
     `${MOVES[kind as keyof typeof MOVES]} ${list(parts)
       .map((one) => `${text(one['pieces'])} ${text(one['kind'])}${stamped(one['stamps'])}`)
       .join(', ')}`,
+  'order.restamp': ({ kind, from, to, words }) =>
+    `restamped one of the ${text(kind)}: ${text(from)} is ${text(to)} now${because(words)}`,
   'order.hold': ({ words, waitsFor }) =>
     `put a hold on, waiting for the ${waitsFor === 'sender' ? 'rebuilder' : 'machine shop'}: ${text(words)}`,
   'order.raise_snag': ({ words, proposal, priceMinor, days }) =>

@@ -93,7 +93,7 @@ export function whyNotClear(facts: Facts, line: LineFact): string | null {
 /** What is missing of a line's parts and kit, in words. */
 export function partsWrong(facts: Facts, line: LineFact): string | null {
   const own = facts.parts.filter((part) => line.partIds.includes(part.id));
-  const there = own.map((part) => whereabouts(part, facts.moves));
+  const there = own.map((part) => whereabouts(part, facts));
   for (const [index, part] of own.entries()) {
     const where = there[index];
     const wrong = where ? piecesMissing(part, where) : part.kind;

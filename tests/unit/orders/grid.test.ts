@@ -33,6 +33,7 @@ const SAMPLES: { readonly [K in CommandKind]: Extract<Command, { do: K }> } = {
   release: { do: 'release', lines: [], reason: '' },
   repeat_back: { do: 'repeat_back', rev: 1, sizes: [] },
   move_parts: { do: 'move_parts', kind: 'sent', parts: [], occurredAt: '2026-12-01T08:00:00Z' },
+  restamp: { do: 'restamp', id: 'r', partId: 'crank', from: 'F318', to: 'F319', words: '' },
   hold: { do: 'hold', id: 'h', lineId: null, reason: 'other', words: 'x', waitsFor: 'sender' },
   answer_hold: { do: 'answer_hold', holdId: 'h', words: '' },
   lift_hold: { do: 'lift_hold', holdId: 'h' },

@@ -156,15 +156,19 @@ export const answerHoldAction = action(holdAnswerSchema, ({ data, ask }) => {
 });
 
 /** Raises a snag. */
-export const raiseSnagAction = action(snagSchema, ({ data, ask }) => {
-  const { lineId, kind, words, proposal, price, days } = data;
-  return press(
-    ask,
-    data,
-    { do: 'raise_snag', id: newId(), lineId, kind, words, proposal, priceMinor: price, days: days ?? 0 },
-    'The snag is raised.',
-  );
-});
+export const raiseSnagAction = action(
+  snagSchema,
+  async ({ data, ask }) => {
+    const { orderId, version, requestKey, lineId, kind, words, proposal, price, days, files } = data;
+    // The snag takes the form's own key for its id: the same form sent twice raises one snag.
+    const said = { lineId, kind, words, proposal, priceMinor: price, days: days ?? 0 };
+    const command = { do: 'raise_snag' as const, id: requestKey, ...said };
+    await runOrderCommand(ask, { orderId, expectedVersion: version, requestKey, command, files });
+    revalidatePath(`/orders/${orderId}`, 'layout');
+    return { done: 'The snag is raised.' };
+  },
+  ['files'],
+);
 
 const snagAnswerSchema = orderFormSchema.extend({
   snagId: z.uuid(),
@@ -188,10 +192,13 @@ export const answerSnagAction = action(snagAnswerSchema, ({ data, ask }) => {
 
 /** Releases the finished sheets as the next rev. */
 export const releaseAction = action(
-  orderFormSchema.extend({ reason: wordsSchema }),
+  orderFormSchema.extend({
+    reason: wordsSchema,
+    past: z.enum(['as_is', 'undersize', 'shells']).optional().catch(undefined),
+  }),
   async ({ data, ask }) => {
-    const { orderId, version, requestKey, reason } = data;
-    await releaseSizes(ask, { orderId, expectedVersion: version, requestKey, reason });
+    const { orderId, version, requestKey, reason, past } = data;
+    await releaseSizes(ask, { orderId, expectedVersion: version, requestKey, reason, past });
     revalidatePath(`/orders/${orderId}`, 'layout');
     return { done: 'Released.' };
   },

@@ -13,6 +13,7 @@ import {
 } from '@/app/(workspace)/orders/[orderId]/actions';
 import { SelectField, TextArea, TextField } from '@/components/forms/fields';
 import { Form, Submit } from '@/components/forms/form';
+import { PhotoPicker } from '@/components/thread/photo-picker';
 import { Sheet } from '@/components/ui/sheet';
 import type { OrderView } from '@/db/read-models/order-page';
 import { operationByKey } from '@/lib/domain/operations/catalogue';
@@ -127,6 +128,7 @@ export function OrderDeeds({ view }: { view: OrderView }) {
             <TextArea name="proposal" label="What you propose" />
             <TextField name="price" label="Price it adds" mono />
             <TextField name="days" label="Working days it adds" mono />
+            <PhotoPicker orderId={facts.id} label="Add photos" />
             <Submit>Raise the snag</Submit>
           </Form>
         </Folded>

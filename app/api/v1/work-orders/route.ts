@@ -6,7 +6,7 @@ import { workOrderFilterSchema, workOrdersAddress } from '@/lib/schemas/work-ord
 
 /** Work orders, narrowed and sorted like the page, a page at a time. */
 export const GET = route({
-  params: z.object({}),
+  params: z.unknown(),
   handle: async ({ ticket, request }) => {
     const asked = Object.fromEntries(new URL(request.url).searchParams);
     const filter = workOrderFilterSchema.parse(asked);

@@ -61,7 +61,7 @@ export const CUTTING_DEEDS: Deeds<
         rev: facts.latestRev,
         cut: cut
           .filter((said) => said.size !== null)
-          .map(({ feature, size, text }) => ({ feature, size, text })),
+          .map(({ lineId, feature, size, text }) => ({ lineId, feature, size, text })),
       },
     });
   },

@@ -19,7 +19,7 @@ const HANDS: Readonly<
 };
 
 /** Hand-overs: sent, checked in piece by piece, sent back, received. */
-export const PARTS_DEEDS: Deeds<'move_parts'> = {
+export const PARTS_DEEDS: Deeds<'move_parts' | 'restamp'> = {
   move_parts: (facts, command, { side }) => {
     const { kind, parts, occurredAt } = command;
     if (HANDS[kind].side !== side)
@@ -54,7 +54,33 @@ export const PARTS_DEEDS: Deeds<'move_parts'> = {
       },
     });
   },
+
+  restamp: (facts, { id, partId, from, to, words }) => {
+    const part = facts.parts.find((one) => one.id === partId);
+    if (!part) return no('That part is not on this order.');
+    const stamp = to.trim();
+    if (stamp === '' || stamp === from) return no('Give the new stamp.');
+    if (!whereabouts(part, facts).stampsThere.includes(from))
+      return no(`None of the ${part.kind} here is stamped ${from}.`);
+    const restamp: Change = { row: 'restamp', id, partId, from, to: stamp, words };
+    const wrong = piecesMissing(
+      part,
+      whereabouts(part, { ...facts, restamps: [...facts.restamps, { partId, from, to: stamp }] }),
+    );
+    const settled: Change[] = wrong === null ? liftPartsHolds(facts) : [];
+    return ok({
+      changes: [restamp, ...settled],
+      note: { restampId: id, kind: part.kind, from, to: stamp, words },
+    });
+  },
 };
+
+/** Holds that the machine shop put on because of the pieces. */
+function liftPartsHolds(facts: Facts): Change[] {
+  return facts.holds
+    .filter((hold) => hold.reason === 'parts' && hold.placedBy === 'partner')
+    .map((hold) => ({ row: 'hold_set', holdId: hold.id, lifted: true }));
+}
 
 function moveProblem(facts: Facts, kind: MoveKind, moved: MovedPart): string | null {
   const part = facts.parts.find((one) => one.id === moved.partId);
@@ -64,7 +90,7 @@ function moveProblem(facts: Facts, kind: MoveKind, moved: MovedPart): string | n
     return 'A correction names an entry of the same part that still stands.';
   }
   const others = facts.moves.filter((move) => move.id !== moved.replacesId);
-  const left = whereabouts(part, others)[HANDS[kind].from];
+  const left = whereabouts(part, { ...facts, moves: others })[HANDS[kind].from];
   if (moved.pieces > left)
     return `Only ${left} of the ${part.kind} ${left === 1 ? 'is' : 'are'} ${HANDS[kind].place}.`;
   if (part.stamps.length > 0 && moved.stamps.length !== moved.pieces)
@@ -94,11 +120,10 @@ function holdsFor(facts: Facts, { kind, parts }: CommandOf<'move_parts'>): Chang
   ];
   const wrong = facts.parts.flatMap((part) => {
     const touched = parts.some((moved) => moved.partId === part.id);
-    const found = touched ? piecesMissing(part, whereabouts(part, moves)) : null;
+    const found = touched ? piecesMissing(part, whereabouts(part, { ...facts, moves })) : null;
     return found === null ? [] : [{ part, found }];
   });
-  const standing = facts.holds.filter((hold) => hold.reason === 'parts' && hold.placedBy === 'partner');
-  const lifted: Change[] = standing.map((hold) => ({ row: 'hold_set', holdId: hold.id, lifted: true }));
+  const lifted = liftPartsHolds(facts);
   const first = parts[0];
   if (wrong.length === 0 || !first) return lifted;
   const words = wrong.map(({ found }) => found).join('; ');

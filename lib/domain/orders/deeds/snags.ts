@@ -12,7 +12,7 @@ export const SNAG_DEEDS: Deeds<'raise_snag' | 'approve_snag' | 'ask_snag' | 'rep
     const snag: SnagFact = { id, lineId, state: 'raised', sizesDue: false, priceMinor, days };
     return ok({
       changes: [{ row: 'snag', snag, kind, words, proposal }],
-      note: { kind, words, proposal, priceMinor, days },
+      note: { snagId: id, kind, words, proposal, priceMinor, days },
     });
   },
 

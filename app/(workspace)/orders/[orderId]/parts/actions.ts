@@ -6,6 +6,27 @@ import { action } from '@/lib/http/action';
 import { orderFormSchema, wordsSchema } from '@/lib/schemas/order-forms';
 import { runOrderCommand } from '@/lib/services/order-commands';
 
+const restampSchema = orderFormSchema.extend({
+  partId: z.uuid(),
+  from: z.string().trim().min(1, 'Say which stamp it has.').max(40),
+  to: z.string().trim().min(1, 'Give the new stamp.').max(40),
+  words: wordsSchema,
+  files: z.array(z.uuid()).max(20),
+});
+
+/** Gives a piece another stamp, with a photo of it. */
+export const restampAction = action(
+  restampSchema,
+  async ({ data, ask }) => {
+    const { orderId, version, requestKey, partId, from, to, words, files } = data;
+    const command = { do: 'restamp' as const, id: requestKey, partId, from, to, words };
+    await runOrderCommand(ask, { orderId, expectedVersion: version, requestKey, command, files });
+    revalidatePath(`/orders/${orderId}`, 'layout');
+    return { done: `Written down: ${from} is ${to} now.` };
+  },
+  ['files'],
+);
+
 const moveSchema = orderFormSchema.extend({
   kind: z.enum(['sent', 'checked_in', 'sent_back', 'received']),
   partId: z.uuid(),

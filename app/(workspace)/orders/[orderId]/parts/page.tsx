@@ -1,7 +1,7 @@
 import { randomUUID } from 'node:crypto';
 import { openOrder, type OrderPageProps } from '@/app/(workspace)/orders/_components/load';
 import { OrderFrame } from '@/app/(workspace)/orders/_components/order-frame';
-import { movePartAction } from '@/app/(workspace)/orders/[orderId]/parts/actions';
+import { movePartAction, restampAction } from '@/app/(workspace)/orders/[orderId]/parts/actions';
 import { ChoiceField, TextField } from '@/components/forms/fields';
 import { Form, Submit } from '@/components/forms/form';
 import { PhotoPicker } from '@/components/thread/photo-picker';
@@ -36,7 +36,7 @@ export default async function PartsPage(props: OrderPageProps) {
       {facts.parts.map((part) => {
         const next = nextMove(facts, part, side);
         const wrong = view.thread.some((entry) => entry.type === 'order.move_parts')
-          ? piecesMissing(part, whereabouts(part, facts.moves))
+          ? piecesMissing(part, whereabouts(part, facts))
           : null;
         return (
           <section key={part.id} className="mb-5 border-b border-rule-2 pb-5">
@@ -47,9 +47,7 @@ export default async function PartsPage(props: OrderPageProps) {
               )}
             </h3>
             <p className="note mb-3">{sayWhere(part, facts)}</p>
-            {wrong !== null && whereabouts(part, facts.moves).partner > 0 && (
-              <Notice tone="refuse">{wrong}</Notice>
-            )}
+            {wrong !== null && whereabouts(part, facts).partner > 0 && <Notice tone="refuse">{wrong}</Notice>}
             {may && next !== null && (
               <Form
                 action={movePartAction}
@@ -91,6 +89,9 @@ export default async function PartsPage(props: OrderPageProps) {
                   <Submit>{DEEDS[next.kind].press}</Submit>
                 </div>
               </Form>
+            )}
+            {view.allowed.includes('restamp') && whereabouts(part, facts).stampsThere.length > 0 && (
+              <Restamp part={part} facts={facts} />
             )}
           </section>
         );
@@ -145,13 +146,38 @@ export default async function PartsPage(props: OrderPageProps) {
   );
 }
 
+/** A piece that carries a wrong stamp, or none that can be told apart, gets another one here. */
+function Restamp({ part, facts }: { part: PartFact; facts: Facts }) {
+  return (
+    <details className="mt-3">
+      <summary className="cursor-pointer text-sm text-blue">Restamp a piece</summary>
+      <Form
+        action={restampAction}
+        requestKey={randomUUID()}
+        version={facts.version}
+        hidden={{ orderId: facts.id, partId: part.id }}
+        className="mt-2 grid max-w-2xl gap-3 sm:grid-cols-2"
+        label={`Restamp: ${part.kind}`}
+      >
+        <TextField name="from" label="Is stamped" mono />
+        <TextField name="to" label="Becomes" mono />
+        <TextField name="words" label="How one knows" className="sm:col-span-2" />
+        <PhotoPicker orderId={facts.id} label="Add photos" />
+        <div>
+          <Submit kind="ghost">Restamp it</Submit>
+        </div>
+      </Form>
+    </details>
+  );
+}
+
 function handOf(kind: MoveKind): Side {
   return kind === 'sent' || kind === 'received' ? 'sender' : 'partner';
 }
 
 /** The next hand-over of a part that this side can make. */
 function nextMove(facts: Facts, part: PartFact, side: Side): { kind: MoveKind; pieces: number } | null {
-  const where = whereabouts(part, facts.moves);
+  const where = whereabouts(part, facts);
   if (side === 'sender') {
     if (where.roadBack > 0) return { kind: 'received', pieces: where.roadBack };
     const canSend = ['sent', 'quoted', 'agreed', 'cutting'].includes(facts.status);
@@ -164,7 +190,7 @@ function nextMove(facts: Facts, part: PartFact, side: Side): { kind: MoveKind; p
 }
 
 function sayWhere(part: PartFact, facts: Facts): string {
-  const where = whereabouts(part, facts.moves);
+  const where = whereabouts(part, facts);
   const places: [number, string][] = [
     [where.home, `with ${facts.sender.name}`],
     [where.roadOut, 'on the road'],
