@@ -1,6 +1,7 @@
 'use client';
 
 import { usePathname } from 'next/navigation';
+import { FindKey } from '@/components/shell/find-key';
 import { Form, Submit } from '@/components/forms/form';
 import { SelectField, TextField } from '@/components/forms/fields';
 import { Wordmark } from '@/components/ui/wordmark';
@@ -52,8 +53,11 @@ export function Rail({ places, person, shop, shopId, shops, colleagues, actions 
       </nav>
       <form action="/orders" role="search" className="ml-auto max-sm:order-2 max-sm:w-full max-sm:pb-2">
         <input type="hidden" name="show" value="all" />
+        <FindKey boxId="find" />
         <input
+          id="find"
           name="find"
+          aria-keyshortcuts="/"
           type="search"
           aria-label="Find an order, stamp or engine"
           placeholder="Find an order, stamp or engine"

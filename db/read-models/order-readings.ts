@@ -28,6 +28,8 @@ export interface DecisionView {
   readonly round: number;
   readonly decision: DecisionKind;
   readonly reason: string;
+  /** None means the whole line. */
+  readonly features: readonly string[];
   readonly author: string;
 }
 
@@ -46,7 +48,7 @@ export async function loadReadings(tx: Tx, orderId: string): Promise<OrderReadin
          join lateral (select case when r.shop_id = o.shop_id then o.side when o.side = 'sender' then 'partner' else 'sender' end as side) s on true
          where r.order_id = ? and not exists (select 1 from readings c where c.replaces_id = r.id)
          order by r.recorded_at, r.id) x), '[]') as readings,
-       coalesce((select json_agg(json_build_object('lineId', line_id, 'round', round, 'decision', decision, 'reason', reason, 'author', author_name) order by round, at)
+       coalesce((select json_agg(json_build_object('lineId', line_id, 'round', round, 'decision', decision, 'reason', reason, 'features', features, 'author', author_name) order by round, at)
          from line_decisions where order_id = ?), '[]') as decisions
      from order_sides mine where mine.order_id = ? and mine.shop_id = app_shop()`,
     [orderId, orderId, orderId],

@@ -115,6 +115,7 @@ export const readingsAnswer = z.strictObject({
       round: z.int(),
       decision: z.enum(['accept', 'as_is', 'send_back', 'reject']),
       reason: z.string(),
+      features: z.array(z.string()).describe('None means the whole line'),
       author: z.string(),
     }),
   ),

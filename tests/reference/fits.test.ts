@@ -1,6 +1,6 @@
 import { describe, expect, it } from 'vitest';
 import { clearanceChain, regrind } from '@/lib/domain/operations/side-sums';
-import { figure, text } from '../support/worksheet';
+import { figure, inches, made, mustWorkOut, text } from '../support/worksheet';
 
 const f = (written: string) => figure('', written);
 
@@ -37,5 +37,35 @@ describe('published figures', () => {
   ])('agrees with the metric regrind table of TM 5-2420-230-24-2 at −%s', (under, low) => {
     const [lower] = regrind([f('68.987 mm'), f('69.000 mm')], f(under));
     expect(lower.value).toBe(f(low).value);
+  });
+
+  // Published: TM 5-3825-226-24, standard 4.5000–4.5015: reboring is required at 4.5090 and gives 4.5205 ± .0005; at 4.5290 it
+  // gives 4.5405 ± .0005. The steps in between are ours; the manual has .020 and .040 only.
+  it.each([
+    ['4.5090', '.020', '.010', '4.5200', '4.5210'],
+    ['4.5290', '.040', '.030', '4.5400', '4.5410'],
+  ])('bores a cylinder found at %s to the oversize of TM 5-3825-226-24', (found, step, less, low, high) => {
+    const raw = {
+      standard: '4.5000',
+      oversize: step,
+      stock: '.003',
+    };
+    const everywhere = Object.fromEntries(
+      ['1', '2', '3', '4'].flatMap((cylinder) =>
+        ['Top across', 'Top along', 'Middle across', 'Middle along', 'Bottom across', 'Bottom along'].flatMap(
+          (place) => [
+            [`found.${cylinder}.${place}`, found],
+            [`keep:found.${cylinder}.${place}`, found],
+          ],
+        ),
+      ),
+    );
+    const { cleanUp } = mustWorkOut('bore', { ...raw, ...everywhere }, { made: made('inline4') });
+    const cleans = (oversize: string) => cleanUp.find((one) => one.step === inches(oversize))?.even;
+    expect([cleans(less), cleans(step)]).toEqual([false, true]);
+    // The manual's finished bore holds the standard plus the oversize that the rule picks.
+    const finished = inches('4.5000') + inches(step);
+    expect(finished).toBeGreaterThanOrEqual(inches(low));
+    expect(finished).toBeLessThanOrEqual(inches(high));
   });
 });

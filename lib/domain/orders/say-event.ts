@@ -52,7 +52,7 @@ const SAYINGS: Readonly<Record<string, Say>> = {
     `decided: ${list(decisions)
       .map(
         (one) =>
-          `${text(one['line'])} ${DECISIONS[one['decision'] as keyof typeof DECISIONS]}${because(one['reason'])}`,
+          `${text(one['line'])}${some(one['features'])} ${DECISIONS[one['decision'] as keyof typeof DECISIONS]}${because(one['reason'])}`,
       )
       .join('; ')}`,
   'order.move_promise': ({ promisedOn, reason }) =>
@@ -91,6 +91,11 @@ function promised(day: unknown, days: unknown): string {
 
 function stamped(stamps: unknown): string {
   return Array.isArray(stamps) && stamps.length > 0 ? `, stamp ${stamps.join(' ')}` : '';
+}
+
+/** ` 4, 5` where a decision is about some features only. */
+function some(features: unknown): string {
+  return Array.isArray(features) && features.length > 0 ? ` ${features.join(', ')}` : '';
 }
 
 function money(minor: unknown): string {

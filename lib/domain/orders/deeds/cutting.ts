@@ -92,10 +92,9 @@ export const CUTTING_DEEDS: Deeds<
       reason,
       features,
     }));
-    const titles = decisions.map(({ lineId, decision, reason }) => ({
+    const titles = decisions.map(({ lineId, decision, reason, features }) => ({
       line: facts.lines.find((line) => line.id === lineId)?.title ?? '',
-      decision,
-      reason,
+      ...{ decision, reason, features },
     }));
     if (decisions.some(({ decision }) => decision === 'send_back')) {
       return ok({

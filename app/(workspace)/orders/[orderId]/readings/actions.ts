@@ -32,11 +32,21 @@ export const reportAction = action(reportSchema, async ({ data, ask }) => {
 const decisionSchema = z.enum(['accept', 'as_is', 'send_back', 'reject']);
 
 const decideSchema = z.looseObject(orderFormSchema.shape).transform((form, context) => {
+  // One box a feature, as feature:LINE:FEATURE; none ticked means the whole line.
+  const ticked = perLine(form, 'feature:').map(({ lineId: name }) => ({
+    lineId: name.slice(0, name.indexOf(':')),
+    feature: name.slice(name.indexOf(':') + 1),
+  }));
   const reasons = new Map(perLine(form, 'reason:').map(({ lineId, value }) => [lineId, value]));
   const decisions = perLine(form, 'decision:').flatMap(({ lineId, value }) => {
     const decision = decisionSchema.safeParse(value);
     if (decision.success)
-      return [{ lineId, decision: decision.data, reason: reasons.get(lineId) ?? '', features: [] }];
+      return [
+        {
+          ...{ lineId, decision: decision.data, reason: reasons.get(lineId) ?? '' },
+          features: ticked.flatMap((one) => (one.lineId === lineId ? [one.feature] : [])),
+        },
+      ];
     context.addIssue({ code: 'custom', path: [`decision:${lineId}`], message: 'Decide on this line.' });
     return [];
   });

@@ -84,6 +84,7 @@ function LineSection({ line, view, actor, readings, decisions, isCut }: LineSect
         <p key={decision.round} className="mb-2 text-[15px]">
           Round {decision.round}: <b className="font-semibold">{DECISIONS[decision.decision]}</b> by{' '}
           {decision.author}
+          {decision.features.length > 0 && <span className="num"> ({decision.features.join(', ')})</span>}
           {decision.reason === '' ? '' : `: ${decision.reason}`}
         </p>
       ))}
@@ -185,11 +186,43 @@ function Decide({ view: { facts } }: { view: OrderView }) {
             label="Reason"
             hint="What is wrong or what comes next; not needed to accept."
           />
+          <FeatureBoxes line={line} facts={facts} />
         </div>
       ))}
       <div>
         <Submit>Decide</Submit>
       </div>
     </Form>
+  );
+}
+
+/** Which journals, cylinders or pieces a decision is about. */
+function FeatureBoxes({ line, facts }: { line: LineFact; facts: OrderView['facts'] }) {
+  const sized = facts.sizes.filter((size) => size.lineId === line.id).map(({ feature }) => feature);
+  const stamped = facts.parts
+    .filter((part) => line.partIds.includes(part.id) && part.pieces > 1)
+    .flatMap(({ stamps }) => stamps);
+  const features = [...new Set(sized.length > 0 ? sized : stamped)];
+  if (features.length < 2) return null;
+  return (
+    <fieldset className="sm:col-span-2">
+      <legend className="note mb-1">Only some of it? Tick which; none ticked means all.</legend>
+      <div className="flex flex-wrap gap-2">
+        {features.map((feature) => (
+          <label
+            key={feature}
+            className="flex min-h-11 min-w-14 cursor-pointer items-center gap-2 rounded border border-rule px-3 has-checked:border-blue has-checked:bg-blue-wash"
+          >
+            <input
+              type="checkbox"
+              name={`feature:${line.id}:${feature}`}
+              value="on"
+              className="size-5 accent-[var(--blue)]"
+            />
+            <span className="num">{feature}</span>
+          </label>
+        ))}
+      </div>
+    </fieldset>
   );
 }
