@@ -90,23 +90,23 @@ export async function copyOrders(ownerUrl: string, shopId: string, orders: numbe
 
 async function chooseTemplates(tx: Knex.Transaction, shopId: string, orders: number): Promise<void> {
   await tx.raw(`
-    -- The fourth group of an id names the copy: the same id in rows and in the log comes out the same.
+    -- An id made here is of version 7; a copy's is of version 8 and holds the copy's number: the same id in rows and in the log comes out the same.
+    create function pg_temp.copy_text(words text, k integer) returns text language sql immutable as $$
+      select regexp_replace(words, '([0-9a-f]{8}-[0-9a-f]{4}-)7[0-9a-f]{3}(-[89ab])[0-9a-f]{3}(-[0-9a-f]{12})',
+        '\\18' || lpad(to_hex(k % 4096), 3, '0') || '\\2' || lpad(to_hex(k / 4096), 3, '0') || '\\3', 'g') $$;
     create function pg_temp.copy_id(id uuid, k integer) returns uuid language sql immutable as $$
-      select overlay(id::text placing lpad(to_hex(k), 4, '0') from 20 for 4)::uuid $$;
-    create function pg_temp.copy_text(words jsonb, k integer, one text, other text) returns jsonb language sql immutable as $$
-      select replace(replace(regexp_replace(words::text, '([0-9a-f]{8}-[0-9a-f]{4}-[0-9a-f]{4}-)[0-9a-f]{4}(-[0-9a-f]{12})',
-          '\\1' || lpad(to_hex(k), 4, '0') || '\\2', 'g'),
-        overlay(one placing lpad(to_hex(k), 4, '0') from 20 for 4), one),
-        overlay(other placing lpad(to_hex(k), 4, '0') from 20 for 4), other)::jsonb $$;
+      select pg_temp.copy_text(id::text, k)::uuid $$;
+    create function pg_temp.copy_json(words jsonb, k integer, one text, other text) returns jsonb language sql immutable as $$
+      select replace(replace(pg_temp.copy_text(words::text, k), pg_temp.copy_text(one, k), one), pg_temp.copy_text(other, k), other)::jsonb $$;
   `);
   await tx.raw(
     `create temporary table copies on commit drop as
      with mine as (select o.id, o.number, o.ended_at is null as is_open, o.sender_shop_id::text as one, o.partner_shop_id::text as other,
-         ('x' || substr(o.id::text, 20, 4))::bit(16)::int as k
+         substr(o.id::text, 15, 1) = '8' as is_copy,
+         ('x' || substr(o.id::text, 21, 3) || substr(o.id::text, 16, 3))::bit(24)::int as k
        from orders o where o.sender_shop_id = ? and o.status <> 'draft' and o.partner_shop_id is not null),
-     -- An id made here has a variant of 8 to b in its fourth group; a copy's number stays below that.
-     base as (select coalesce(max(k) filter (where k < 32768), 0) as k, (select order_no from shop_counters where shop_id = ?) as number from mine),
-     templates as (select * from mine where k >= 32768)
+     base as (select coalesce(max(k) filter (where is_copy), 0) as k, (select order_no from shop_counters where shop_id = ?) as number from mine),
+     templates as (select * from mine where not is_copy)
      select t.id as template, t.number as was, t.one, t.other, base.k + c.k as k,
        (base.number + row_number() over (order by c.k, t.id))::int as number
      from templates t cross join base
@@ -146,8 +146,8 @@ const COPIED: Readonly<Record<string, string>> = {
   'order_sides.number': 'c.number',
   'orders.words': 'array_replace(t.words, c.was::text, c.number::text)',
   'order_words.word': 'case when t.word = c.was::text then c.number::text else t.word end',
-  'events.payload': 'pg_temp.copy_text(t.payload, c.k, c.one, c.other)',
-  'events.did': 'pg_temp.copy_text(t.did, c.k, c.one, c.other)',
+  'events.payload': 'pg_temp.copy_json(t.payload, c.k, c.one, c.other)',
+  'events.did': 'pg_temp.copy_json(t.did, c.k, c.one, c.other)',
 };
 
 function copyOf({ table, name, type }: Column): string {

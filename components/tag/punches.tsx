@@ -15,7 +15,7 @@ function Hole({ state, size }: { state: PunchState; size: number }) {
   return (
     <svg width={size} height={size} viewBox={`0 0 ${size} ${size}`} aria-hidden className="mx-auto block">
       {state === 'met' && <circle cx={middle} cy={middle} r={middle} className="fill-ink" />}
-      {state === 'met' && size > 24 && (
+      {state === 'met' && (
         <path
           d={`M${size * 0.28} ${size * 0.52}l${size * 0.15} ${size * 0.15} ${size * 0.3} -${size * 0.32}`}
           className="fill-none stroke-manila-2"
@@ -47,7 +47,7 @@ export function SmallPunches({ punches, stopped }: { punches: PunchesValue; stop
       <span className="sr-only">{stopped ? `Stopped; ${words}` : words}</span>
       <div aria-hidden className="relative flex w-max gap-2">
         {NAMES.map((name) => (
-          <Hole key={name} state={punches[name]} size={18} />
+          <span key={name} className={`hole hole-${punches[name]}`} />
         ))}
         {stopped && (
           <span className="absolute -inset-x-1 inset-y-0 bg-past text-center font-stencil text-[15px] leading-[18px] font-extrabold tracking-widest text-paper">

@@ -48,7 +48,10 @@ async function runProduct(): Promise<void> {
       say(`The ${name} has stopped by itself (${String(code)}); see ${path.join(home, 'logs')}.`);
       void end(1);
     };
-    leaveWord(home, { pid: process.pid, web: product.web, mailbox: product.mailbox });
+    leaveWord(home, {
+      ...{ pid: process.pid, web: product.web, mailbox: product.mailbox },
+      database: product.cluster.port,
+    });
     welcome(product);
   } catch (error) {
     say(`It did not start: ${error instanceof Error ? error.message : String(error)}`);

@@ -6,6 +6,8 @@ export interface RunningCopy {
   readonly pid: number;
   readonly web: string;
   readonly mailbox: string;
+  /** Port of its PostgreSQL. */
+  readonly database: number;
 }
 
 /** The copy that is running from this folder already, if any. */
