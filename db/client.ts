@@ -16,6 +16,7 @@ pg.types.setTypeParser(pg.types.builtins.INT8, (text) => {
 });
 pg.types.setTypeParser(pg.types.builtins.DATE, (text) => text);
 
+const POOL_SIZE = 20;
 let pool: Knex | undefined;
 
 /** The pool of the application's role. */
@@ -23,7 +24,7 @@ export function database(): Knex {
   pool ??= knex({
     client: 'pg',
     connection: settings().DATABASE_URL,
-    pool: { min: 0, max: 20 },
+    pool: { min: 0, max: POOL_SIZE },
     acquireConnectionTimeout: 5000,
   });
   return pool;
@@ -64,17 +65,16 @@ async function open<T>(work: (tx: Tx) => Promise<T>): Promise<T> {
   }
 }
 
-/** A line that died while it lay in the pool is found out at BEGIN, when nothing has been done yet: then another is taken, once. */
-async function openOnce<T>(work: (tx: Tx) => Promise<T>, mayTryAgain = true): Promise<T> {
-  const begun: Tx[] = [];
+/**
+ * A line that died while it lay in the pool is found out at BEGIN, when nothing has been done yet: then another is
+ * taken, until every line that the pool may hold has been tried.
+ */
+async function openOnce<T>(work: (tx: Tx) => Promise<T>, lines = POOL_SIZE): Promise<T> {
   try {
-    return await database().transaction((tx) => {
-      begun.push(tx);
-      return work(tx);
-    });
+    return await database().transaction(work);
   } catch (error) {
-    if (begun.length > 0 || !mayTryAgain || !isOutage(error)) throw error;
-    return openOnce(work, false);
+    if (lines === 0 || !isDeadAtBegin(error)) throw error;
+    return openOnce(work, lines - 1);
   }
 }
 
@@ -138,4 +138,11 @@ function isOutage(error: unknown): boolean {
       error.message,
     )
   );
+}
+
+/** A connection that was there and is there no more, found out by the first word on it; knex puts that word before the error. */
+function isDeadAtBegin(error: unknown): boolean {
+  if (!(error instanceof Error) || !error.message.startsWith('BEGIN')) return false;
+  const code = 'code' in error ? String(error.code) : '';
+  return ['ECONNRESET', 'EPIPE', '57P01'].includes(code) || error.message.includes('Connection terminated');
 }

@@ -21,7 +21,7 @@ export default async function BenchPage() {
   }));
   const moment = now();
   const waited = (stub: OrderStub) => (calendar ? sayWaiting(calendar, stub.clockSince, moment) : '');
-  const oldest = bench.yours[0];
+  const oldest = bench.yours.find(({ clock }) => clock !== 'none');
   return (
     <main className="page">
       <div className="mb-4 flex flex-wrap items-baseline gap-x-4 gap-y-2">
@@ -51,7 +51,7 @@ export default async function BenchPage() {
               <TagStub
                 key={stub.orderId}
                 {...stubProps(stub, moment)}
-                waiting={`waiting ${waited(stub)}`}
+                waiting={stub.clock === 'none' ? '' : `waiting ${waited(stub)}`}
                 hot
               />
             ))}
