@@ -31,3 +31,6 @@ export class AppError extends Error {
     this.current = more.current;
   }
 }
+
+/** Said of a text with a NUL in it: some keyboards and scanners send one. */
+export const UNWRITABLE = 'There is a character in here that cannot be kept. Type it again.';

@@ -3,7 +3,7 @@ import { unstable_rethrow } from 'next/navigation';
 import type { z } from 'zod';
 import { reportUnexpected } from '@/lib/adapters/log';
 import { type BrowserTicket, requireTicket } from '@/lib/auth/ticket';
-import { AppError } from '@/lib/errors';
+import { AppError, UNWRITABLE } from '@/lib/errors';
 import type { FormAction, FormState } from '@/lib/forms/form-state';
 
 type Handle<T, A> = (asked: { readonly data: T; readonly ask: A }) => Promise<FormState>;
@@ -33,6 +33,9 @@ function build<T, A>(
     const values = typed(form);
     try {
       const ask = await who();
+      const unwritable = unwritableFields(form);
+      if (Object.keys(unwritable).length > 0)
+        return { message: 'Check the marked fields.', fields: unwritable, values };
       const parsed = schema.safeParse(read(form, lists));
       if (parsed.success) return await handle(parsed.data, ask);
       const fields: Record<string, string[]> = {};
@@ -44,6 +47,14 @@ function build<T, A>(
       return { ...refusal(error), values };
     }
   };
+}
+
+/** Fields that hold the one character that no record can hold. */
+function unwritableFields(form: FormData): Record<string, string[]> {
+  const names = [...form.entries()].flatMap(([name, value]) =>
+    typeof value === 'string' && value.includes('\u0000') ? [name] : [],
+  );
+  return Object.fromEntries(names.map((name) => [name, [UNWRITABLE]]));
 }
 
 function refusal(error: unknown): FormState {

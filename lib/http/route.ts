@@ -2,7 +2,7 @@ import 'server-only';
 import { unstable_rethrow } from 'next/navigation';
 import type { z } from 'zod';
 import { type BrowserTicket, requireTicket } from '@/lib/auth/ticket';
-import { AppError } from '@/lib/errors';
+import { AppError, UNWRITABLE } from '@/lib/errors';
 import { toProblemResponse } from '@/lib/http/problem';
 import { requireSameOrigin } from '@/lib/http/same-origin';
 
@@ -66,6 +66,7 @@ async function readJson(request: Request): Promise<unknown> {
     throw new AppError('invalid', 'Send JSON.');
   const text = await request.text();
   if (text.length > 1_000_000) throw new AppError('invalid', 'This is too much at once.');
+  if (text.includes('\\u0000')) throw new AppError('invalid', UNWRITABLE);
   try {
     return JSON.parse(text) as unknown;
   } catch {

@@ -183,6 +183,23 @@ const ACTIONS: Readonly<Record<string, Press>> = {
   changePersonAction: { form: { personId: ID, password: 'x' }, outcomes: everybody('through') },
 };
 
+/** What people, scripts and broken phones put into a box. */
+const HOSTILE = [
+  ...[
+    '',
+    ' ',
+    'x'.repeat(20_000),
+    '<img src=x onerror=alert(1)>',
+    '-1',
+    '1e309',
+    'NaN',
+    '\u0000',
+    '１２',
+    '🔧',
+  ],
+  ...['{"$gt":""}', "'; drop table orders; --", '__proto__', '../../etc', '2026-02-30', '\u202e2405'],
+];
+
 /** For people who are not signed in, or about nothing but this browser. */
 const OPEN = new Set([
   ...['acceptAction', 'setPasswordAction', 'askForResetAction', 'newShopAction', 'signInAction'],
@@ -264,6 +281,24 @@ describe('server actions', () => {
       expect(found).toEqual(outcomes);
       expect(outcomeOf(await press(name, form, null))).toBe('sign in');
     },
+  );
+
+  it.each(Object.entries(ACTIONS))(
+    '%s takes bad input in any field without breaking, and says what is wrong',
+    async (name, { form, outcomes }) => {
+      // A stranger to the demonstration presses what belongs to a shop; a party presses what belongs to the order.
+      const by = outcomes === parties ? 'ownOwner' : 'stranger';
+      const broken: string[] = [];
+      for (const field of Object.keys(form)) {
+        for (const value of HOSTILE) {
+          const said = await press(name, { ...form, [field]: value }, by);
+          if (!/"(message|done)":"|\/(bench|builds|orders)/.test(said) || said.includes('Something broke'))
+            broken.push(`${field}=${value.slice(0, 20)}: ${said.slice(0, 200)}`);
+        }
+      }
+      expect(broken).toEqual([]);
+    },
+    120_000,
   );
 
   it('are refused when another site sends them', async () => {

@@ -213,6 +213,7 @@ describe('routes', () => {
     expect(await ask(post, { by: 'ownOwner', headers: { ...OWN, 'idempotency-key': '' } })).toBe(422);
     expect(await ask(put, { by: 'ownOwner', headers: { ...OWN, 'if-match': '' } })).toBe(428);
     expect(await ask(put, { by: 'ownOwner', headers: OWN, body: '{' })).toBe(422);
+    expect(await ask(put, { by: 'ownOwner', headers: OWN, body: '{"raw":{"least":"a\\u0000"}}' })).toBe(422);
     expect(await ask(put, { by: 'ownOwner', headers: { ...OWN, 'content-type': 'text/plain' } })).toBe(422);
     expect(await ask(put, { by: 'ownOwner', headers: OWN, body: '{"raw":{},"shop_id":"x"}' })).toBe(422);
   });
