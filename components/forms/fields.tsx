@@ -158,6 +158,8 @@ type ChoiceFieldProps = FieldProps & {
   options: readonly { value: string; label: string; note?: string }[];
 };
 
+const LONG = 14;
+
 /** Choices that all stand in view: one of them, or several. */
 export function ChoiceField(props: ChoiceFieldProps) {
   const field = useField(props);
@@ -170,7 +172,10 @@ export function ChoiceField(props: ChoiceFieldProps) {
           {props.hint}
         </p>
       )}
-      <div className="grid gap-2 sm:grid-cols-2">
+      {/* A long list scrolls in its own box, so that what follows it stays in reach. */}
+      <div
+        className={`grid gap-2 sm:grid-cols-2 ${props.options.length > LONG ? 'max-h-96 overflow-y-auto border border-rule-2 p-2' : ''}`}
+      >
         {props.options.map(({ value, label, note }) => (
           <label
             key={value}

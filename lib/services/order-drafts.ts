@@ -73,6 +73,15 @@ export async function keepDraft(
   });
 }
 
+/** Keeps the asker's shop's own reference for an order; the other shop never sees it. */
+export async function setReference(ticket: Ticket, orderId: string, text: string): Promise<void> {
+  await begin(ticket, async (tx, actor) => {
+    requirePermission(actor, 'message');
+    if (!(await isThere(tx, orderId))) throw new AppError('not_found', 'There is no such order.');
+    await keepReference(tx, actor, orderId, text);
+  });
+}
+
 /** Throws a draft away. */
 export async function discardDraft(ticket: Ticket, orderId: string): Promise<void> {
   await begin(ticket, async (tx, actor) => {

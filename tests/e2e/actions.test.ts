@@ -89,6 +89,7 @@ const ACTIONS: Readonly<Record<string, Press>> = {
     form: { orderId: demoId('order a draft'), requestKey: randomUUID(), body: 'x' },
     outcomes: everybody('no such thing'),
   },
+  setReferenceAction: { form: { orderId: ORDER, reference: 'PO 7' }, outcomes: parties },
   discardAction: { form: seen(), outcomes: everybody('no such thing') },
   keepDraftAction: {
     form: {

@@ -112,7 +112,7 @@ describe('a whole work order in two browsers', () => {
     await page.getByText('Kept as you type').waitFor();
     expect(await axeViolations(page)).toEqual([]);
     await page.getByRole('link', { name: 'Back to the order' }).click();
-    await page.getByText('Crack test usually comes before grind rod journals.').waitFor();
+    await page.getByText('Hot wash or Crack test usually comes before grind rod journals.').waitFor();
     await page.getByRole('button', { name: 'Send the order' }).click();
     await tagSays(page, 'Their move: name a price.');
     await mailTo('owner@grinding.example', /Name a price/);

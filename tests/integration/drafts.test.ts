@@ -1,5 +1,7 @@
 import { randomUUID } from 'node:crypto';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
+import { begin } from '@/db/client';
+import { loadOrder } from '@/db/read-models/order-page';
 import { holdPort } from '@/lib/cli/start/ports';
 import { sendNotice } from '@/lib/jobs/send-notice';
 import type { DraftInput } from '@/lib/schemas/order-draft';
@@ -7,7 +9,7 @@ import { createBuild } from '@/lib/services/builds';
 import { addPart } from '@/lib/services/builds';
 import { acceptInvitation, namePartner } from '@/lib/services/invitations';
 import { runOrderCommand } from '@/lib/services/order-commands';
-import { keepDraft } from '@/lib/services/order-drafts';
+import { keepDraft, setReference } from '@/lib/services/order-drafts';
 import { keepWorksheet } from '@/lib/services/worksheets';
 import { findPreset } from '@/lib/domain/builds/presets';
 import { type Mailbox, startMailbox } from '../../fake-services/mailbox';
@@ -117,6 +119,22 @@ describe('a draft', () => {
     await expect(
       keepDraft(stranger.owner, { id: randomUUID(), version: 0 }, { ...EMPTY, partIds: [crank] }),
     ).rejects.toMatchObject({ code: 'invalid', fields: { partIds: ['Choose the parts again.'] } });
+  });
+});
+
+describe('a reference', () => {
+  it('is each side’s own, and never the other’s', async () => {
+    const id = randomUUID();
+    const input = { ...EMPTY, partnerShopId: partner.shopId, partIds: [crank], operations: ['polish'] };
+    await keepDraft(shop.owner, { id, version: 0 }, { ...input, reference: 'PO 7' });
+    await expect(setReference(partner.owner, id, 'job 12')).rejects.toMatchObject({ code: 'not_found' });
+    const command = { do: 'send' as const };
+    await runOrderCommand(shop.owner, { orderId: id, expectedVersion: 1, requestKey: randomUUID(), command });
+    await setReference(partner.owner, id, 'job 12');
+    const reference = (ticket: { tokenHash: string }) =>
+      begin(ticket, async (tx, actor) => (await loadOrder(tx, actor, id))?.reference);
+    expect(await reference(shop.owner)).toBe('PO 7');
+    expect(await reference(partner.owner)).toBe('job 12');
   });
 });
 

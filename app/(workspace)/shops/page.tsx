@@ -52,7 +52,8 @@ export default async function ShopsPage() {
                     href={workOrdersAddress({ ...OPEN, with: partner.shopId })}
                     className="inline-block min-h-6 py-1"
                   >
-                    <span className="num">{partner.openOrders}</span> open orders
+                    <span className="num">{partner.openOrders}</span> open{' '}
+                    {partner.openOrders === 1 ? 'order' : 'orders'}
                   </a>
                 </span>
                 <PartnerDeeds partner={partner} actor={actor} />

@@ -14,15 +14,14 @@ export function inOrderOfWork(keys: readonly string[]): readonly string[] {
 }
 
 /**
- * What a builder would ask about an order's operations: what usually comes before one of them and is not on the
- * order, as `Crack test usually comes before grinding …`. Common practice, no source.
+ * What a builder would ask about an order's operations: one of which nothing that usually comes before it is on the
+ * order, with what that would be. Common practice, no source.
  */
 export function missingBefore(
   keys: readonly string[],
-): readonly { readonly key: string; readonly before: string }[] {
-  return keys.flatMap((key) =>
-    operationByKey(key)
-      .after.filter((earlier) => !keys.includes(earlier))
-      .map((earlier) => ({ key: earlier, before: key })),
-  );
+): readonly { readonly key: string; readonly earlier: readonly string[] }[] {
+  return keys.flatMap((key) => {
+    const earlier = operationByKey(key).after;
+    return earlier.length === 0 || earlier.some((one) => keys.includes(one)) ? [] : [{ key, earlier }];
+  });
 }

@@ -20,7 +20,7 @@ import {
 } from '@/lib/schemas/order-forms';
 import { writeMessage } from '@/lib/services/messages';
 import { runOrderCommand } from '@/lib/services/order-commands';
-import { discardDraft } from '@/lib/services/order-drafts';
+import { discardDraft, setReference } from '@/lib/services/order-drafts';
 import { releaseSizes } from '@/lib/services/worksheets';
 
 type OrderForm = z.infer<typeof orderFormSchema>;
@@ -41,6 +41,18 @@ async function press(
 export const sendAction = action(orderFormSchema, ({ data, ask }) =>
   press(ask, data, { do: 'send' }, 'Sent.'),
 );
+
+const referenceSchema = z.object({
+  orderId: z.uuid(),
+  reference: z.string().trim().max(60, 'Use at most 60 letters.'),
+});
+
+/** Keeps one's own reference for the order. */
+export const setReferenceAction = action(referenceSchema, async ({ data, ask }) => {
+  await setReference(ask, data.orderId, data.reference);
+  revalidatePath(`/orders/${data.orderId}`, 'layout');
+  return { done: 'Kept. Only your own shop sees it.' };
+});
 
 /** Throws a draft away. */
 export const discardAction = action(orderFormSchema, async ({ data, ask }) => {

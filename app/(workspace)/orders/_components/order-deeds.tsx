@@ -10,6 +10,7 @@ import {
   movePromiseAction,
   raiseSnagAction,
   sendAction,
+  setReferenceAction,
 } from '@/app/(workspace)/orders/[orderId]/actions';
 import { SelectField, TextArea, TextField } from '@/components/forms/fields';
 import { Form, Submit } from '@/components/forms/form';
@@ -33,10 +34,10 @@ export function OrderDeeds({ view }: { view: OrderView }) {
     <>
       {may('send') && (
         <Sheet title="Send it" note="The partner sees the order from then on, and gets one e-mail.">
-          {missingBefore(facts.lines.map((line) => line.operation)).map(({ key, before }) => (
-            <p key={`${key} ${before}`} className="note mb-2">
-              ▲ {operationByKey(key).title} usually comes before {operationByKey(before).title.toLowerCase()}.
-              Put it on the order, or leave it out if it is done.
+          {missingBefore(facts.lines.map((line) => line.operation)).map(({ key, earlier }) => (
+            <p key={key} className="note mb-2">
+              ▲ {earlier.map((one) => operationByKey(one).title).join(' or ')} usually comes before{' '}
+              {operationByKey(key).title.toLowerCase()}. Put it on the order, or leave it out if it is done.
             </p>
           ))}
           <a href={`/orders/${facts.id}/edit`} className="btn btn-ghost mb-3">
@@ -176,6 +177,24 @@ export function OrderDeeds({ view }: { view: OrderView }) {
               defaultValue={view.standingInstruction}
             />
             <Submit kind="ghost">Change it</Submit>
+          </Form>
+        </Folded>
+      )}
+      {facts.status !== 'draft' && (
+        <Folded title="Our reference">
+          <Form
+            action={setReferenceAction}
+            hidden={{ orderId: facts.id }}
+            className="grid gap-3"
+            label="Our reference"
+          >
+            <TextField
+              name="reference"
+              label="Our reference"
+              hint="Your own number or words for it; the other shop does not see it."
+              defaultValue={view.reference}
+            />
+            <Submit kind="ghost">Keep it</Submit>
           </Form>
         </Folded>
       )}
