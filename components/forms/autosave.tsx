@@ -1,6 +1,8 @@
 'use client';
 
 import { useEffect, useRef, useState } from 'react';
+import { useFormContext } from '@/components/forms/form';
+import { keepVersion } from '@/components/forms/keep-version';
 
 interface AutosaveProps {
   /** Where the form is kept, by PUT. */
@@ -9,8 +11,6 @@ interface AutosaveProps {
   version: number;
   /** Fields of which there may be several. */
   lists: readonly string[];
-  /** Fields that are not sent. */
-  leaveOut?: readonly string[];
 }
 
 type Saved = 'kept' | 'keeping' | 'stale' | 'waiting' | 'refused';
@@ -23,34 +23,44 @@ const WORDS: Readonly<Record<Saved, string>> = {
   stale: 'This was changed on another screen in the meantime. Load the page again to see it.',
 };
 
-/** Keeps the form around it while one types, half a second after the last change and when the page is left. */
-export function Autosave({ url, version: first, lists, leaveOut = [] }: AutosaveProps) {
+/**
+ * Keeps the form around it while one types, half a second after the last change and when the page is left. The
+ * version stands in a hidden box, so that the form's own press carries the one that the last save made; a press waits
+ * for a save that is on its way.
+ */
+export function Autosave({ url, version, lists }: AutosaveProps) {
+  const { state } = useFormContext();
   const [saved, setSaved] = useState<Saved>('kept');
-  const [version, setVersion] = useState(first);
-  const place = useRef<HTMLInputElement>(null);
-  const current = useRef(first);
-  const saves = useRef<Promise<void>>(Promise.resolve());
-  const manners = useRef({ url, lists, leaveOut });
+  // After a refusal the fields are made anew: the version goes on from the one that was pressed.
+  const [current, setCurrent] = useState(state.values?.['version'] ?? String(version));
+  const box = useRef<HTMLInputElement>(null);
+  const manners = useRef({ url, lists });
   useEffect(() => {
-    const form = place.current?.form;
-    if (!form) return undefined;
+    const versionBox = box.current;
+    const form = versionBox?.form;
+    if (!versionBox || !form) return undefined;
     let timer: ReturnType<typeof setTimeout> | undefined;
+    let saving: Promise<void> | undefined;
     let isOpen = false;
     const save = async () => {
-      if (!isOpen) return;
       isOpen = false;
-      const answer = await put(manners.current.url, current.current, bodyOf(form, manners.current));
-      if (typeof answer === 'string') {
-        isOpen = answer === 'waiting';
-        setSaved(answer);
-        return;
+      const { url: to, lists: many } = manners.current;
+      const answer = await keepVersion(to, Number(versionBox.value), bodyOf(form, many));
+      if (answer.is === 'kept') {
+        // At once, not with the next drawing: a press or a save may be waiting for it.
+        versionBox.value = String(answer.version);
+        setCurrent(versionBox.value);
       }
-      current.current = answer;
-      setVersion(answer);
-      setSaved('kept');
+      if (answer.is === 'waiting') isOpen = true;
+      setSaved(answer.is);
     };
+    // One save after the other: each carries the version that the one before it made.
     const queue = () => {
-      saves.current = saves.current.then(save);
+      if (!isOpen) return;
+      const mine = (saving ?? Promise.resolve()).then(save).finally(() => {
+        if (saving === mine) saving = undefined;
+      });
+      saving = mine;
     };
     const change = () => {
       isOpen = true;
@@ -58,19 +68,30 @@ export function Autosave({ url, version: first, lists, leaveOut = [] }: Autosave
       clearTimeout(timer);
       timer = setTimeout(queue, 500);
     };
+    const press = (submit: SubmitEvent) => {
+      // What is typed goes with the press itself.
+      clearTimeout(timer);
+      isOpen = false;
+      if (!saving) return;
+      submit.preventDefault();
+      submit.stopPropagation();
+      void saving.then(() => form.requestSubmit(submit.submitter));
+    };
     form.addEventListener('input', change);
+    form.addEventListener('submit', press);
     window.addEventListener('pagehide', queue);
     window.addEventListener('online', queue);
     return () => {
       clearTimeout(timer);
       form.removeEventListener('input', change);
+      form.removeEventListener('submit', press);
       window.removeEventListener('pagehide', queue);
       window.removeEventListener('online', queue);
     };
   }, []);
   return (
     <>
-      <input ref={place} type="hidden" name="version" value={version} readOnly />
+      <input ref={box} type="hidden" name="version" value={current} readOnly />
       <p className="note" aria-live="polite">
         {WORDS[saved]}
       </p>
@@ -78,35 +99,12 @@ export function Autosave({ url, version: first, lists, leaveOut = [] }: Autosave
   );
 }
 
-function bodyOf(
-  form: HTMLFormElement,
-  { lists, leaveOut = [] }: { lists: readonly string[]; leaveOut?: readonly string[] },
-): string {
+/** What the form itself carries beside what is kept. */
+const CARRIED = new Set(['version', 'requestKey', 'orderId']);
+
+function bodyOf(form: HTMLFormElement, lists: readonly string[]): string {
   const data = new FormData(form);
-  const out = new Set(['version', 'requestKey', 'orderId', ...leaveOut]);
-  const names = [...new Set(data.keys())].filter((name) => !out.has(name) && !name.startsWith('$'));
+  const names = [...new Set(data.keys())].filter((name) => !CARRIED.has(name) && !name.startsWith('$'));
   const one = Object.fromEntries(names.map((name) => [name, data.get(name)]));
   return JSON.stringify({ ...one, ...Object.fromEntries(lists.map((name) => [name, data.getAll(name)])) });
-}
-
-/** Answers the new version, or why it was not kept. Survives leaving the page. */
-async function put(
-  url: string,
-  version: number,
-  body: string,
-): Promise<number | Exclude<Saved, 'kept' | 'keeping'>> {
-  try {
-    const response = await fetch(url, {
-      method: 'PUT',
-      headers: { 'content-type': 'application/json', 'if-match': `"${version}"` },
-      body,
-      keepalive: true,
-    });
-    if (response.status === 412) return 'stale';
-    if (response.status === 422) return 'refused';
-    if (!response.ok) return 'waiting';
-    return ((await response.json()) as { version: number }).version;
-  } catch {
-    return 'waiting';
-  }
 }

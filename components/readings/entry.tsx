@@ -108,6 +108,8 @@ export function ReadingsEntry({ orderId, lineId, unit, features, positions, stag
       }
       setTyped({});
       ids.current.clear();
+      // The next round is looked at anew.
+      setAfter({ side: '', text: '' });
       const next = features[features.findIndex((one) => one.feature === feature) + 1];
       setSaid(`${limits?.what ?? ''} ${feature}: ${readings.length} readings are kept.`);
       if (next) setFeature(next.feature);

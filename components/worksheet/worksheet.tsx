@@ -1,6 +1,7 @@
 'use client';
 
 import { useEffect, useMemo, useRef, useState } from 'react';
+import { keepVersion } from '@/components/forms/keep-version';
 import { SheetConflict } from '@/components/worksheet/sheet-conflict';
 import { SheetAnswer } from '@/components/worksheet/sheet-answer';
 import { SheetFields } from '@/components/worksheet/sheet-fields';
@@ -24,12 +25,13 @@ interface WorksheetProps {
   house?: House | undefined;
 }
 
-type Saved = 'kept' | 'keeping' | 'stale' | 'waiting';
+type Saved = 'kept' | 'keeping' | 'stale' | 'waiting' | 'refused';
 
 const WORDS: Readonly<Record<Saved, string>> = {
   kept: 'Kept as you type',
   keeping: 'Keeping …',
   waiting: 'Not kept yet: no connection. What you typed is still here.',
+  refused: 'Not kept: this sheet is no longer yours to write on. Load the page again.',
   stale: 'Somebody else wrote on this sheet. What you typed is still here.',
 };
 
@@ -60,17 +62,17 @@ export function Worksheet({
   useEffect(() => {
     if (!isOpen) return undefined;
     const save = async () => {
-      const answer = await keep(id, version.current, raw);
-      if (answer === 'waiting') {
-        setSaved(answer);
+      const answer = await keepVersion<Theirs>(
+        `/api/v1/worksheets/${id}`,
+        version.current,
+        JSON.stringify({ raw }),
+      );
+      if (answer.is !== 'kept') {
+        if (answer.is === 'stale') setTheirs(answer.current);
+        setSaved(answer.is);
         return;
       }
-      if (typeof answer === 'object') {
-        setTheirs(answer);
-        setSaved('stale');
-        return;
-      }
-      version.current = answer;
+      version.current = answer.version;
       setKept(raw);
       setSaved('kept');
     };
@@ -138,21 +140,4 @@ export function Worksheet({
 interface Theirs {
   readonly version: number;
   readonly raw: Raw;
-}
-
-/** Keeps the sheet; survives leaving the page. Answers the new version, what somebody else wrote, or that it must wait. */
-async function keep(id: string, version: number, raw: Raw): Promise<number | Theirs | 'waiting'> {
-  try {
-    const response = await fetch(`/api/v1/worksheets/${id}`, {
-      method: 'PUT',
-      headers: { 'content-type': 'application/json', 'if-match': `"${version}"` },
-      body: JSON.stringify({ raw }),
-      keepalive: true,
-    });
-    if (response.status === 412) return ((await response.json()) as { current: Theirs }).current;
-    if (!response.ok) return 'waiting';
-    return ((await response.json()) as { version: number }).version;
-  } catch {
-    return 'waiting';
-  }
 }

@@ -114,6 +114,14 @@ export async function up(knex: Knex): Promise<void> {
     end $$;
     create trigger clock_legs_guard before insert on clock_legs for each row execute function guard_leg();
 
+    -- How many pieces with a stamp are at the machine shop.
+    create function stamp_count(of_order uuid, of_part uuid, of_stamp text) returns bigint
+      language sql stable security definer set search_path = public, pg_temp as $$
+      select coalesce(sum(case m.kind when 'checked_in' then 1 when 'sent_back' then -1 else 0 end), 0)
+      from custody_moves m cross join unnest(m.stamps) as seen (stamp)
+      where m.order_id = of_order and m.part_id = of_part and seen.stamp = of_stamp
+        and not exists (select 1 from custody_moves later where later.replaces_id = m.id) $$;
+
     -- The questions of the order machine about one line, asked a second time on purpose. The kit is the catalogue's, not the database's.
     create function line_not_clear(asked uuid) returns text language plpgsql stable security definer set search_path = public, pg_temp as $$
     declare line order_lines; newest integer;
@@ -129,15 +137,12 @@ export async function up(knex: Knex): Promise<void> {
         and (a.kind = 'work' or (a.kind = 'inspection' and not line.needs_sizes)))
       then return 'the price is not agreed'; end if;
       if exists (
-        with standing as (select m.* from custody_moves m where m.order_id = line.order_id
-          and not exists (select 1 from custody_moves n where n.replaces_id = m.id))
         select 1 from order_line_parts lp join order_parts p using (order_id, part_id)
         where lp.line_id = line.id and (
           p.pieces > (select coalesce(sum(case m.kind when 'checked_in' then m.pieces when 'sent_back' then -m.pieces else 0 end), 0)
-            from standing m where m.part_id = p.part_id)
-          or exists (select 1 from unnest(p.stamps) as s (stamp) where 1 > (
-            select coalesce(sum(case m.kind when 'checked_in' then 1 when 'sent_back' then -1 else 0 end), 0)
-            from standing m cross join unnest(m.stamps) as seen (stamp) where m.part_id = p.part_id and seen.stamp = s.stamp))))
+            from custody_moves m where m.order_id = line.order_id and m.part_id = p.part_id
+              and not exists (select 1 from custody_moves later where later.replaces_id = m.id))
+          or exists (select 1 from unnest(p.stamps) as s (stamp) where stamp_count(line.order_id, p.part_id, s.stamp) < 1)))
       then return 'the pieces are not all there'; end if;
       if line.needs_sizes then
         select max(number) into newest from revs where order_id = line.order_id;
@@ -188,7 +193,7 @@ export async function down(knex: Knex): Promise<void> {
     drop trigger clock_legs_guard on clock_legs;
     drop trigger quotes_guard on quotes;
     drop trigger quote_lines_total on quote_lines;
-    drop function guard_line_start(), line_not_clear(uuid), guard_leg(), guard_quote();
+    drop function guard_line_start(), line_not_clear(uuid), stamp_count(uuid, uuid, text), guard_leg(), guard_quote();
     create or replace function guard_cutting() returns trigger language plpgsql security definer set search_path = public, pg_temp as $$
       begin return null; end $$;
     drop policy worksheets_lent_fill on worksheets;

@@ -29,7 +29,10 @@ export async function loadAlreadyCut(
            and not exists (select 1 from readings c where c.replaces_id = r.id)
          group by r.line_id, r.feature) x), '[]') as read,
        (select json_build_object('rev', e.payload -> 'rev', 'cut', e.payload -> 'cut', 'author', e.author_name, 'at', e.occurred_at)
-          from events e where e.order_id = o.id and e.type = 'order.answer_stop' order by e.seq desc limit 1) as said
+          from events e where e.order_id = o.id and e.type = 'order.answer_stop'
+            -- A decision on the work begins a new round: what was said before it is not cut in this one.
+            and e.seq > coalesce((select max(d.seq) from events d where d.order_id = o.id and d.type = 'order.decide'), 0)
+          order by e.seq desc limit 1) as said
      from orders o where o.id = ?`,
     [orderId],
   );

@@ -105,3 +105,27 @@ export async function loadParts(
   const shown = rows.slice(0, page.limit);
   return { rows: shown, next: rows.length > page.limit ? (shown.at(-1)?.id ?? null) : null };
 }
+
+/** So many parts at home stand to choose from on an order, the newest. */
+const CHOICE = 300;
+
+/** Parts that can go on an order: those that are chosen already, wherever they are, and the newest ones at home. */
+export async function loadPartsToSend(
+  tx: Tx,
+  actor: Actor,
+  orderId: string | null,
+): Promise<{ parts: PartRow[]; chosen: string[] }> {
+  const { rows } = await tx.raw<{ rows: (PartRow & { isChosen: boolean })[] }>(
+    `with chosen as (select part_id from order_parts where order_id = ?),
+       at_home as (select p.id from parts p where p.shop_id = ?
+         and exists (select 1 from part_places h where h.part_id = p.id and h.place = 'home' and h.pieces > 0)
+         order by p.created_at desc, p.id desc limit ${CHOICE})
+     select ${PART.replace(' as where', ' as "where"')}, b.engine, b.number as "buildNumber",
+       p.id in (select part_id from chosen) as "isChosen"
+     from parts p left join builds b on b.id = p.build_id
+     where p.shop_id = ? and p.id in (select part_id from chosen union select id from at_home)
+     order by p.created_at desc, p.id desc`,
+    [orderId, actor.shopId, actor.shopId],
+  );
+  return { parts: rows, chosen: rows.filter(({ isChosen }) => isChosen).map(({ id }) => id) };
+}

@@ -1,5 +1,6 @@
 import 'server-only';
 import type { Tx } from '@/db/client';
+import type { House } from '@/lib/domain/operations/house';
 import type { Actor, ShopUnit } from '@/lib/domain/actor';
 
 export interface ShopView {
@@ -11,7 +12,7 @@ export interface ShopView {
   readonly hours: readonly { readonly weekday: number; readonly opens: string; readonly closes: string }[];
   /** From today on. */
   readonly closedDays: readonly { readonly day: string; readonly note: string }[];
-  readonly house: Readonly<Record<string, string>>;
+  readonly house: House;
   readonly signIns: readonly {
     readonly id: string;
     readonly agent: string;
@@ -24,7 +25,7 @@ export interface ShopView {
 /** The asker's own shop with its hours and defaults, and where the asker is signed in: one statement. */
 export async function loadShop(tx: Tx, actor: Actor, tokenHash: string): Promise<ShopView> {
   const { rows } = await tx.raw<{ rows: ShopView[] }>(
-    `select s.name, s.unit, s.time_zone as "timeZone", s.version, coalesce(s.house -> 'typed', '{}') as house,
+    `select s.name, s.unit, s.time_zone as "timeZone", s.version, json_build_object('unit', coalesce(s.house ->> 'unit', s.unit), 'typed', coalesce(s.house -> 'typed', '{}'::jsonb)) as house,
        coalesce((select json_agg(json_build_object('weekday', h.weekday, 'opens', to_char(h.opens, 'HH24:MI'), 'closes', to_char(h.closes, 'HH24:MI'))
          order by h.weekday, h.opens) from shop_hours h where h.shop_id = s.id), '[]') as hours,
        coalesce((select json_agg(json_build_object('day', c.day, 'note', c.note) order by c.day) from shop_closed_days c

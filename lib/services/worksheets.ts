@@ -1,5 +1,5 @@
 import 'server-only';
-import { begin, type Tx } from '@/db/client';
+import { begin } from '@/db/client';
 import { loadAlreadyCut } from '@/db/read-models/already-cut';
 import {
   findWorksheet,
@@ -95,33 +95,14 @@ export async function releaseSizes(
       return line;
     });
     const { past, reason, ...press } = input;
+    const { cut } = await loadAlreadyCut(tx, input.orderId);
+    const made = begun.flatMap((sheet) => previewOf(cut, sheet, { unit: actor.unit, house }));
     const decided = decidePast(
-      await pastOf(tx, input.orderId, { begun, lines, unit: actor.unit, house }),
+      made.filter(({ is }) => is.state === 'past'),
       past,
     );
     const why = [reason.replace(/[.\s]+$/, ''), decided].filter((words) => words !== '').join('. ');
     return commandIn(tx, actor, { ...press, command: { do: 'release', lines, reason: why } });
-  });
-}
-
-interface Releasing {
-  readonly begun: readonly WorksheetRow[];
-  readonly lines: readonly ReleasedLine[];
-  readonly unit: Actor['unit'];
-  readonly house: House;
-}
-
-/** Features that are cut already and that the sizes about to be released leave past size. */
-async function pastOf(
-  tx: Tx,
-  orderId: string,
-  { begun, lines, unit, house }: Releasing,
-): Promise<MadeOfCut[]> {
-  const { cut } = await loadAlreadyCut(tx, orderId);
-  if (cut.length === 0) return [];
-  return lines.flatMap((line) => {
-    const sheet = begun.find(({ lineId }) => lineId === line.lineId);
-    return sheet ? previewOf(cut, sheet, { unit, house }).filter(({ is }) => is.state === 'past') : [];
   });
 }
 
@@ -132,17 +113,17 @@ export function previewOf(
   from: { readonly unit: Actor['unit']; readonly house: House },
 ): readonly MadeOfCut[] {
   const made = madeOf(sheet);
-  const line = releasedLine(sheet.lineId, sheet, { ...from, made });
-  if (!line) return [];
-  const { figures } = workSheet(sheet.operation, sheet.raw, { ...from, made }).filled;
-  return madeOfCut(cut, line, { operation: operationByKey(sheet.operation), made, figures });
+  const { filled, worked } = workSheet(sheet.operation, sheet.raw, { ...from, made });
+  if (!worked) return [];
+  const atHand = { operation: operationByKey(sheet.operation), made, figures: filled.figures };
+  return madeOfCut(cut, { lineId: sheet.lineId, sizes: worked.sizes }, atHand);
 }
 
 /** Says what was decided about features past size. @throws AppError invalid when that is still open. */
 function decidePast(past: readonly MadeOfCut[], decision: PastDecision | undefined): string {
   if (past.length === 0) return '';
   const which = past.map(({ what, feature }) => `${what.toLowerCase()} ${feature}`).join(', ');
-  if (decision !== undefined) return `Past size at these limits: ${which}; ${PAST_DECISIONS[decision]}.`;
+  if (decision !== undefined) return `Past size at these limits: ${which}; ${PAST_DECISIONS[decision].said}.`;
   throw new AppError(
     'invalid',
     `Cut already, and past size at the new limits: ${which}. Decide on them first.`,

@@ -1,6 +1,6 @@
 import { begin, database, type Tx } from '@/db/client';
 import { loadBench } from '@/db/read-models/bench';
-import { loadBuild, loadBuilds, loadParts } from '@/db/read-models/builds';
+import { loadBuild, loadBuilds, loadParts, loadPartsToSend } from '@/db/read-models/builds';
 import { loadCalendars } from '@/db/read-models/calendars';
 import { loadFeed } from '@/db/read-models/feed';
 import { loadOrder } from '@/db/read-models/order-page';
@@ -75,7 +75,7 @@ export function pagesOf(
       async (tx, actor) => {
         await loadOrder(tx, actor, orderId);
         await loadPartners(tx, actor);
-        await loadParts(tx, actor, { limit: 300, after: null });
+        await loadPartsToSend(tx, actor, orderId);
       },
     ],
     ['builds', (tx, actor) => loadBuilds(tx, actor, { limit: 100, below: null })],

@@ -140,4 +140,15 @@ describe('what is already cut', () => {
       ['3', 'in_size'],
     ]);
   });
+
+  it('of an earlier round is not taken for this one, once the work was sent back', async () => {
+    await order.act('partner', keyBack(rods, 2, '1.8858', '1.8853'));
+    await order.act('partner', { do: 'report', unread: [{ lineId: rods, reason: 'on paper' }] });
+    await order.act('partner', handOver('sent_back', order.partId));
+    await order.act('sender', handOver('received', order.partId));
+    const decision = { lineId: rods, decision: 'send_back' as const, reason: 'journal 4', features: ['4'] };
+    await order.act('sender', { do: 'decide', decisions: [decision] });
+    const known = await begin(order.sender.owner, (tx) => loadAlreadyCut(tx, order.id));
+    expect(known).toEqual({ cut: [], said: null });
+  });
 });

@@ -1,6 +1,7 @@
 import { randomUUID } from 'node:crypto';
 import { afterAll, beforeAll, describe, expect, it } from 'vitest';
 import { begin } from '@/db/client';
+import { loadPartsToSend } from '@/db/read-models/builds';
 import { loadOrder } from '@/db/read-models/order-page';
 import { holdPort } from '@/lib/cli/start/ports';
 import { sendNotice } from '@/lib/jobs/send-notice';
@@ -87,6 +88,26 @@ describe('a draft', () => {
       [grind?.id],
     );
     expect(links).toEqual([{ kind: 'crankshaft' }]);
+  });
+
+  it('offers its own parts wherever they are, beside the newest at home, and none of other shops', async () => {
+    const id = randomUUID();
+    await keepDraft(shop.owner, { id, version: 0 }, { ...EMPTY, partIds: [crank] });
+    // Many newer parts at home must not push the draft's own part off its list.
+    await read(
+      `insert into parts (id, shop_id, kind, pieces, created_at)
+       select gen_random_uuid(), $1, 'other part', 1, now() + interval '1 hour' from generate_series(1, 320)`,
+      [shop.shopId],
+    );
+    const offered = await begin(shop.owner, (tx, actor) => loadPartsToSend(tx, actor, id));
+    expect(offered.chosen).toEqual([crank]);
+    expect(offered.parts).toHaveLength(301);
+    const fresh = await begin(shop.owner, (tx, actor) => loadPartsToSend(tx, actor, null));
+    expect(fresh.parts).toHaveLength(300);
+    expect(await begin(partner.owner, (tx, actor) => loadPartsToSend(tx, actor, id))).toEqual({
+      parts: [],
+      chosen: [],
+    });
   });
 
   it('is not overwritten by a screen that has not seen its latest change', async () => {

@@ -197,13 +197,14 @@ describe('the log alone', () => {
     await stopped.act('partner', { do: 'start', lineId: rods });
     const lines = [rodSizes(rods, '1.8847', '1.8842')];
     await stopped.act('sender', { do: 'release', lines, reason: 'measured again' });
-    expect(await checkLogs(shops.sender.owner)).toEqual({ checked: 4, differences: [] });
-    expect(await checkLogs(shops.partner.owner)).toEqual({ checked: 0, differences: [] });
+    expect(await checkLogs(shops.sender.owner)).toEqual({ checked: 4, older: 0, differences: [] });
+    expect(await checkLogs(shops.partner.owner)).toEqual({ checked: 0, older: 0, differences: [] });
     await readAsSuperuser(database.superuserUrl(), `update orders set clock = 'road' where id = $1`, [
       whole.id,
     ]);
     expect(await checkLogs(shops.sender.owner)).toEqual({
       checked: 4,
+      older: 0,
       differences: [{ orderId: whole.id, about: ['clock'] }],
     });
   });

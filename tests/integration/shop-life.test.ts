@@ -3,6 +3,7 @@ import { describe, expect, it } from 'vitest';
 import { begin } from '@/db/client';
 import { loadCalendars } from '@/db/read-models/calendars';
 import { loadPartners } from '@/db/read-models/partners';
+import { houseText } from '@/lib/domain/operations/house';
 import { loadShop } from '@/db/read-models/shop';
 import { setClock } from '@/lib/adapters/clock';
 import { workingMinutes } from '@/lib/domain/calendar/calendar';
@@ -69,8 +70,14 @@ describe('house defaults', () => {
     const { house } = houseSchema.parse(asked);
     await changeHouse(shop.owner, 1, house);
     const kept = await begin(shop.owner, (tx, actor) => loadShop(tx, actor, ''));
-    expect(kept.house).toEqual(house.typed);
+    expect(kept.house).toEqual(house);
     await expect(changeHouse(shop.owner, 1, house)).rejects.toMatchObject({ code: 'stale' });
+    // A shop that goes over to inches still means the hundredth of a millimetre that it typed.
+    const key = 'hone.honeLimit';
+    expect(houseText(kept.house, key, 'mm')).toBe('0,01');
+    expect(houseText(kept.house, key, 'in')).toBe('0,01 mm');
+    const resaved = houseSchema.parse({ version: '2', unit: 'in', [`house:${key}`]: '0,01 mm' }).house;
+    expect(houseText(resaved, key, 'mm')).toBe('0,01 mm');
     const bench = await buildPerson(shop, ['bench']);
     await expect(changeHouse(bench, 2, house)).rejects.toMatchObject({ code: 'forbidden' });
     const [name = ''] = Object.keys(house.typed);

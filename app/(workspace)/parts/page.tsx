@@ -1,8 +1,7 @@
 import { randomUUID } from 'node:crypto';
 import { z } from 'zod';
 import { addPartAction } from '@/app/(workspace)/builds/actions';
-import { PartFields } from '@/components/builds/part-fields';
-import { Form, Submit } from '@/components/forms/form';
+import { AddPart } from '@/components/builds/add-part';
 import { Scroll } from '@/components/ui/scroll';
 import { Sheet } from '@/components/ui/sheet';
 import { begin } from '@/db/client';
@@ -63,16 +62,7 @@ export default async function PartsPage({ searchParams }: { searchParams: Promis
         </Sheet>
         {can(actor, 'builds') && (
           <Sheet title="A part with no build" note="Stock, or a loose part that belongs to no engine here.">
-            <Form
-              action={addPartAction}
-              requestKey={randomUUID()}
-              hidden={{ buildId: '' }}
-              className="grid gap-3"
-              label="Add a part"
-            >
-              <PartFields />
-              <Submit kind="ghost">Add the part</Submit>
-            </Form>
+            <AddPart action={addPartAction} requestKey={randomUUID()} buildId="" />
           </Sheet>
         )}
       </div>

@@ -6,7 +6,8 @@ import {
   remindPartnerAction,
 } from '@/app/(workspace)/shops/actions';
 import { Form, Submit } from '@/components/forms/form';
-import { TextArea, TextField } from '@/components/forms/fields';
+import { TextArea } from '@/components/forms/fields';
+import { NameShop } from '@/components/shops/name-shop';
 import { Sheet } from '@/components/ui/sheet';
 import { begin } from '@/db/client';
 import { loadPartners, type PartnerRow } from '@/db/read-models/partners';
@@ -66,16 +67,12 @@ export default async function ShopsPage() {
             title="Invite a machine shop"
             note="It gets an e-mail with a link that opens its own shop here."
           >
-            <Form
+            <NameShop
               action={invitePartnerAction}
               requestKey={randomUUID()}
-              className="grid gap-4"
               label="Invite a machine shop"
-            >
-              <TextField name="shopName" label="Name of the shop" />
-              <TextField name="email" label="E-mail of its owner" type="email" autoComplete="off" />
-              <Submit>Invite</Submit>
-            </Form>
+              press="Invite"
+            />
           </Sheet>
         )}
       </div>

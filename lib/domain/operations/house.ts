@@ -1,6 +1,7 @@
 import { OPERATIONS } from '@/lib/domain/operations/catalogue';
 import { COMMON, type Operation } from '@/lib/domain/operations/operation';
 import type { LengthUnit } from '@/lib/domain/quantity/length';
+import { parseLength } from '@/lib/domain/quantity/parse-length';
 
 /** A shop's own defaults as typed, by operation and field: `grind_rods.least`. What is not there is the catalogue's. */
 export interface House {
@@ -21,6 +22,15 @@ export function withHouse(operation: Operation, house: House | undefined): Opera
     ] as const;
   });
   return { ...operation, fields: Object.fromEntries(fields) };
+}
+
+/** A default as it is shown to a shop that works in `unit`: one typed in the other unit says so, and means the same. */
+export function houseText({ unit: own, typed }: House, key: string, unit: LengthUnit): string {
+  const text = typed[key] ?? '';
+  if (text === '' || own === unit) return text;
+  const [inches, millimetres] = [parseLength(text, 'in'), parseLength(text, 'mm')];
+  const saysItself = inches.ok && millimetres.ok && inches.value === millimetres.value;
+  return saysItself ? text : `${text} ${own}`;
 }
 
 /** One default that a shop may set for itself. */

@@ -2,7 +2,7 @@ import { rodsOnJournal } from '@/lib/domain/builds/features';
 import type { Made } from '@/lib/domain/builds/made';
 import type { Filled } from '@/lib/domain/operations/fill';
 import type { Operation } from '@/lib/domain/operations/operation';
-import type { ReleasedLine } from '@/lib/domain/orders/commands';
+import type { SizeFact } from '@/lib/domain/orders/facts';
 import { largest, type Length, smallest, subtract } from '@/lib/domain/quantity/length';
 import { judge, type Judgement } from '@/lib/domain/readings/judge';
 
@@ -31,11 +31,17 @@ export interface SheetAtHand {
   readonly figures: Filled['figures'];
 }
 
-/** Holds what is already cut against sizes that are about to be released. */
+/** A line's limits: about to be released, or as they stand. */
+interface LineLimits {
+  readonly lineId: string;
+  readonly sizes: readonly Pick<SizeFact, 'feature' | 'what' | 'cutting' | 'lower' | 'upper'>[];
+}
+
+/** Holds what is already cut against a line's limits; with the sheet at hand also the clearance it would run with. */
 export function madeOfCut(
   cut: readonly CutFeature[],
-  line: Pick<ReleasedLine, 'lineId' | 'sizes'>,
-  sheet: SheetAtHand,
+  line: LineLimits,
+  sheet?: SheetAtHand,
 ): readonly MadeOfCut[] {
   return line.sizes.flatMap((size) => {
     const found = cut.find((one) => one.lineId === line.lineId && one.feature === size.feature);
@@ -43,7 +49,7 @@ export function madeOfCut(
     return [
       {
         ...{ lineId: line.lineId, feature: size.feature, what: size.what, sizes: found.sizes },
-        ...{ is: judge(found.sizes, size), runs: runsWith(found, sheet) },
+        ...{ is: judge(found.sizes, size), runs: sheet ? runsWith(found, sheet) : null },
       },
     ];
   });
@@ -62,10 +68,10 @@ function runsWith(
   return { clearance, isOver: most !== undefined && clearance > most.value };
 }
 
-/** What may be decided about features that the new limits leave past size. */
+/** What may be decided about features that the new limits leave past size: on the button, and in the rev's reason. */
 export const PAST_DECISIONS = {
-  as_is: 'accepted as they are',
-  undersize: 'the next undersize for all',
-  shells: 'other shells for these',
+  as_is: { label: 'Accept them as they are', said: 'accepted as they are' },
+  undersize: { label: 'Next undersize for all', said: 'the next undersize for all' },
+  shells: { label: 'Other shells for these', said: 'other shells for these' },
 } as const;
 export type PastDecision = keyof typeof PAST_DECISIONS;

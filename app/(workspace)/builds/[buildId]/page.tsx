@@ -2,7 +2,7 @@ import { randomUUID } from 'node:crypto';
 import { notFound } from 'next/navigation';
 import { z } from 'zod';
 import { addPartAction, changeBuildAction } from '@/app/(workspace)/builds/actions';
-import { PartFields } from '@/components/builds/part-fields';
+import { AddPart } from '@/components/builds/add-part';
 import { BuildFields } from '@/components/builds/build-fields';
 import { Form, Submit } from '@/components/forms/form';
 import { CrankMap } from '@/components/parts-map/crank-map';
@@ -55,18 +55,12 @@ export default async function BuildPage({ params }: { params: Promise<{ buildId:
                 </li>
               ))}
             </ul>
-            <Form
+            <AddPart
               action={addPartAction}
               requestKey={randomUUID()}
-              hidden={{ buildId: build.id }}
-              className="mt-4 grid gap-3 sm:grid-cols-2"
-              label="Add a part"
-            >
-              <PartFields />
-              <div>
-                <Submit kind="ghost">Add the part</Submit>
-              </div>
-            </Form>
+              buildId={build.id}
+              className="mt-4 sm:grid-cols-2"
+            />
           </Sheet>
           <Sheet title="Work orders">
             {build.orders.length === 0 && <p className="note">None yet.</p>}

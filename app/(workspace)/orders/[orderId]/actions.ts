@@ -6,6 +6,7 @@ import { z } from 'zod';
 import { newId } from '@/lib/adapters/ids';
 import type { BrowserTicket } from '@/lib/auth/ticket';
 import type { Command } from '@/lib/domain/orders/commands';
+import { PAST_DECISIONS, type PastDecision } from '@/lib/domain/sizes/already-cut';
 import type { FormState } from '@/lib/forms/form-state';
 import { action } from '@/lib/http/action';
 import { daySchema } from '@/lib/schemas/build';
@@ -206,7 +207,10 @@ export const answerSnagAction = action(snagAnswerSchema, ({ data, ask }) => {
 export const releaseAction = action(
   orderFormSchema.extend({
     reason: wordsSchema,
-    past: z.enum(['as_is', 'undersize', 'shells']).optional().catch(undefined),
+    past: z
+      .enum(Object.keys(PAST_DECISIONS) as [PastDecision, ...PastDecision[]])
+      .optional()
+      .catch(undefined),
   }),
   async ({ data, ask }) => {
     const { orderId, version, requestKey, reason, past } = data;

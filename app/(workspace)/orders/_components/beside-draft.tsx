@@ -1,9 +1,8 @@
 import { randomUUID } from 'node:crypto';
 import { addPartAction } from '@/app/(workspace)/builds/actions';
 import { namePartnerAction } from '@/app/(workspace)/orders/new/actions';
-import { PartFields } from '@/components/builds/part-fields';
-import { TextField } from '@/components/forms/fields';
-import { Form, Submit } from '@/components/forms/form';
+import { AddPart } from '@/components/builds/add-part';
+import { NameShop } from '@/components/shops/name-shop';
 import { Sheet } from '@/components/ui/sheet';
 import { type Actor, can } from '@/lib/domain/actor';
 
@@ -23,16 +22,7 @@ export function BesideDraft({
         <Sheet title="A part that is not written down yet">
           <details open={opensParts}>
             <summary className="cursor-pointer">Write it down here, or on its build.</summary>
-            <Form
-              action={addPartAction}
-              requestKey={randomUUID()}
-              hidden={{ buildId: '' }}
-              className="mt-3 grid gap-3"
-              label="Add a part"
-            >
-              <PartFields />
-              <Submit kind="ghost">Add the part</Submit>
-            </Form>
+            <AddPart action={addPartAction} requestKey={randomUUID()} buildId="" className="mt-3" />
           </details>
         </Sheet>
       )}
@@ -40,16 +30,14 @@ export function BesideDraft({
         <Sheet title="A machine shop that is not here yet">
           <details open={opensShops}>
             <summary className="cursor-pointer">Name it: it gets one e-mail, with this order in it.</summary>
-            <Form
+            <NameShop
               action={namePartnerAction}
               requestKey={randomUUID()}
-              className="mt-3 grid gap-3"
               label="Name a machine shop"
-            >
-              <TextField name="shopName" label="Name of the shop" />
-              <TextField name="email" label="E-mail of its owner" type="email" autoComplete="off" />
-              <Submit kind="ghost">Name it</Submit>
-            </Form>
+              press="Name it"
+              kind="ghost"
+              className="mt-3"
+            />
           </details>
         </Sheet>
       )}

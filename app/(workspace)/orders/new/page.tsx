@@ -5,7 +5,7 @@ import { BesideDraft } from '@/app/(workspace)/orders/_components/beside-draft';
 import { DraftForm } from '@/app/(workspace)/orders/_components/draft-form';
 import { Empty } from '@/components/ui/empty';
 import { begin } from '@/db/client';
-import { loadParts } from '@/db/read-models/builds';
+import { loadPartsToSend } from '@/db/read-models/builds';
 import { isThere, loadOrder, type OrderView } from '@/db/read-models/order-page';
 import { loadPartners } from '@/db/read-models/partners';
 import { requirePageTicket } from '@/lib/auth/ticket';
@@ -32,19 +32,18 @@ export default async function NewOrderPage({
       like: likeId.success ? await loadOrder(tx, asker, likeId.data) : undefined,
       isKept: await isThere(tx, draftId.data),
       partners: await loadPartners(tx, asker),
-      parts: (await loadParts(tx, asker, { limit: 300, after: null })).rows,
+      parts: (await loadPartsToSend(tx, asker, null)).parts,
     }),
   );
   if (isKept) redirect(`/orders/${draftId.data}/edit`);
-  const atHome = parts.filter((part) => part.where.some(({ place }) => place === 'home'));
   const shops = partners.filter(({ state }) => state === 'active' || state === 'invited');
   return (
     <main className="page">
       <h1 className="mb-4">New work order</h1>
       <div className="grid items-start gap-5 xl:grid-cols-[minmax(0,1fr)_372px]">
-        {atHome.length === 0 || shops.length === 0 ? (
+        {parts.length === 0 || shops.length === 0 ? (
           <Empty title="First things first">
-            {atHome.length === 0 && <p>Write the part down, here or on its build.</p>}
+            {parts.length === 0 && <p>Write the part down, here or on its build.</p>}
             {shops.length === 0 && (
               <p>Name the machine shop. You can send it the order before it has come in.</p>
             )}
@@ -55,10 +54,10 @@ export default async function NewOrderPage({
             version={0}
             values={valuesLike(like)}
             partners={shops}
-            parts={atHome}
+            parts={parts}
           />
         )}
-        <BesideDraft actor={actor} opensParts={atHome.length === 0} opensShops={shops.length === 0} />
+        <BesideDraft actor={actor} opensParts={parts.length === 0} opensShops={shops.length === 0} />
       </div>
     </main>
   );

@@ -8,7 +8,7 @@ import { SelectField, SizeField, TextField } from '@/components/forms/fields';
 import { Form, Submit } from '@/components/forms/form';
 import { Sheet } from '@/components/ui/sheet';
 import type { ShopView } from '@/db/read-models/shop';
-import { HOUSE_FIELDS } from '@/lib/domain/operations/house';
+import { HOUSE_FIELDS, houseText } from '@/lib/domain/operations/house';
 import { sayDay } from '@/lib/forms/say';
 import { WEEKDAYS } from '@/lib/schemas/shop-settings';
 
@@ -103,7 +103,7 @@ export function HouseSheet({ shop }: { shop: ShopView }) {
                   name={`house:${field.key}`}
                   label={field.label}
                   hint={`Catalogue: ${field.value} in, ${field.source}`}
-                  defaultValue={shop.house[field.key] ?? ''}
+                  defaultValue={houseText(shop.house, field.key, shop.unit)}
                 />
               ))}
             </div>

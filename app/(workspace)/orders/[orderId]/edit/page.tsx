@@ -2,21 +2,19 @@ import { notFound } from 'next/navigation';
 import { BesideDraft } from '@/app/(workspace)/orders/_components/beside-draft';
 import { DraftForm } from '@/app/(workspace)/orders/_components/draft-form';
 import { openOrder, type OrderPageProps } from '@/app/(workspace)/orders/_components/load';
-import { loadParts } from '@/db/read-models/builds';
+import { loadPartsToSend } from '@/db/read-models/builds';
 import { loadPartners } from '@/db/read-models/partners';
 import { can } from '@/lib/domain/actor';
 
 export const metadata = { title: 'Draft' };
 
 export default async function EditDraftPage(props: OrderPageProps) {
-  const { view, actor, more } = await openOrder(props, async (tx, asker) => ({
+  const { view, actor, more } = await openOrder(props, async (tx, asker, orderId) => ({
     partners: await loadPartners(tx, asker),
-    parts: (await loadParts(tx, asker, { limit: 300, after: null })).rows,
+    ...(await loadPartsToSend(tx, asker, orderId)),
   }));
   const { facts } = view;
   if (facts.status !== 'draft' || !can(actor, 'order')) notFound();
-  const chosen = new Set(facts.parts.map(({ id }) => id));
-  const isHere = ({ place }: { place: string }) => place === 'home';
   return (
     <main className="page">
       <h1 className="mb-4">
@@ -31,7 +29,7 @@ export default async function EditDraftPage(props: OrderPageProps) {
           version={facts.version}
           values={{
             partnerShopId: facts.partner?.shopId ?? null,
-            partIds: [...chosen],
+            partIds: more.chosen,
             operations: facts.lines.map((line) => line.operation),
             neededBackOn: facts.neededBackOn,
             transport: view.transport,
@@ -41,7 +39,7 @@ export default async function EditDraftPage(props: OrderPageProps) {
             reference: view.reference,
           }}
           partners={more.partners.filter(({ state }) => state === 'active' || state === 'invited')}
-          parts={more.parts.filter((part) => chosen.has(part.id) || part.where.some(isHere))}
+          parts={more.parts}
         />
         <BesideDraft actor={actor} opensParts={false} opensShops={false} />
       </div>

@@ -8,7 +8,7 @@ import { Notice } from '@/components/ui/notice';
 import type { OrderView } from '@/db/read-models/order-page';
 import type { SizesView } from '@/db/read-models/order-sizes';
 import type { LengthUnit } from '@/lib/domain/quantity/length';
-import type { CutFeature } from '@/lib/domain/sizes/already-cut';
+import { type CutFeature, PAST_DECISIONS } from '@/lib/domain/sizes/already-cut';
 import { previewOf } from '@/lib/services/worksheets';
 
 interface SheetsProps {
@@ -75,11 +75,7 @@ export function Sheets({ view, sizes, cut: alreadyCut, unit }: SheetsProps) {
               kind="radio"
               name="past"
               label="What is past size at the new limits"
-              options={[
-                { value: 'as_is', label: 'Accept it as it is' },
-                { value: 'undersize', label: 'Next undersize for all' },
-                { value: 'shells', label: 'Other shells for these' },
-              ]}
+              options={Object.entries(PAST_DECISIONS).map(([value, { label }]) => ({ value, label }))}
             />
           )}
           <div>

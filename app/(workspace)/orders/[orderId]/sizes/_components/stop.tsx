@@ -6,7 +6,7 @@ import { AlreadyCut } from '@/components/order/already-cut';
 import type { SaidAtStop as Said } from '@/db/read-models/already-cut';
 import type { OrderView } from '@/db/read-models/order-page';
 import type { LengthUnit } from '@/lib/domain/quantity/length';
-import { judge } from '@/lib/domain/readings/judge';
+import { madeOfCut } from '@/lib/domain/sizes/already-cut';
 import { sayMoment } from '@/lib/forms/say';
 
 /** What the machine shop said at the STOP, held against the limits that stand now. */
@@ -22,12 +22,10 @@ export function SaidAtStop({
   timeZone: string;
 }) {
   const { facts } = view;
-  const made = said.cut.flatMap(({ lineId, feature, size }) => {
-    const limits = facts.sizes.find((one) => one.lineId === lineId && one.feature === feature);
-    return limits
-      ? [{ lineId, feature, what: limits.what, sizes: [size], is: judge([size], limits), runs: null }]
-      : [];
-  });
+  const cut = said.cut.map(({ lineId, feature, size }) => ({ lineId, feature, sizes: [size] }));
+  const made = facts.lines.flatMap(({ id }) =>
+    madeOfCut(cut, { lineId: id, sizes: facts.sizes.filter((size) => size.lineId === id) }),
+  );
   const by = `${said.author}, ${sayMoment(said.at, timeZone)}`;
   return (
     <section className="mb-5">
