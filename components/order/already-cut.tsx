@@ -1,4 +1,5 @@
 import { sayJudgement } from '@/components/readings/ribbon';
+import { Scroll } from '@/components/ui/scroll';
 import type { LengthUnit } from '@/lib/domain/quantity/length';
 import { largest, smallest } from '@/lib/domain/quantity/length';
 import { printNear } from '@/lib/domain/quantity/print-length';
@@ -17,35 +18,44 @@ export function AlreadyCut({
   unit: LengthUnit;
   title: string;
 }) {
+  const runs = made.some((one) => one.runs !== null);
   return (
-    <table className="w-full max-w-xl text-[15px]">
-      <caption className="pb-1 text-left font-semibold">{title}</caption>
-      <thead>
-        <tr className="border-b border-rule text-left text-[13px] text-ink-3">
-          <th className="py-1 pr-3 font-medium">Feature</th>
-          <th className="py-1 pr-3 font-medium">Is at</th>
-          <th className="py-1 pr-3 font-medium">The new sizes make it</th>
-          <th className="py-1 font-medium">It runs with</th>
-        </tr>
-      </thead>
-      <tbody>
-        {made.map((one) => (
-          <tr key={`${one.lineId} ${one.feature}`} className="border-b border-rule-2">
-            <th scope="row" className="py-1.5 pr-3 text-left font-normal">
-              {one.what} {one.feature}
-            </th>
-            <td className="num pr-3">{sayRange(one, unit)}</td>
-            <td className={`pr-3 font-semibold ${TONES[one.is.state]}`}>
-              {MARKS[one.is.state]} {sayJudgement(one.is, unit)}
-            </td>
-            <td className="num">
-              {one.runs === null ? '–' : printNear(one.runs.clearance, unit)}
-              {one.runs?.isOver === true && <b className="font-semibold text-past"> over the most</b>}
-            </td>
+    <Scroll label={title}>
+      <table className="w-full max-w-2xl text-[15px]">
+        <caption className="pb-1 text-left font-semibold">{title}</caption>
+        <thead>
+          <tr className="border-b border-rule text-left text-[13px] text-ink-3">
+            <th className="py-1 pr-3 font-medium">Feature</th>
+            <th className="py-1 pr-3 font-medium">Is at</th>
+            <th className="py-1 pr-3 font-medium">The new sizes make it</th>
+            {runs && <th className="py-1 font-medium">It runs with</th>}
           </tr>
-        ))}
-      </tbody>
-    </table>
+        </thead>
+        <tbody>
+          {made.map((one) => (
+            <tr key={`${one.lineId} ${one.feature}`} className="border-b border-rule-2 whitespace-nowrap">
+              <th scope="row" className="py-1.5 pr-3 text-left font-normal">
+                {one.what} {one.feature}
+              </th>
+              <td className="num pr-3">{sayRange(one, unit)}</td>
+              <td className={`pr-3 font-semibold ${TONES[one.is.state]}`}>
+                {MARKS[one.is.state]} {sayJudgement(one.is, unit)}
+              </td>
+              {runs && <td>{one.runs === null ? '–' : <Runs runs={one.runs} unit={unit} />}</td>}
+            </tr>
+          ))}
+        </tbody>
+      </table>
+    </Scroll>
+  );
+}
+
+function Runs({ runs, unit }: { runs: NonNullable<MadeOfCut['runs']>; unit: LengthUnit }) {
+  return (
+    <>
+      <span className="num">{printNear(runs.clearance, unit)}</span>
+      {runs.isOver && <b className="font-semibold text-past"> over the most</b>}
+    </>
   );
 }
 

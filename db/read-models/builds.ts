@@ -124,7 +124,7 @@ export async function loadPartsToSend(
        p.id in (select part_id from chosen) as "isChosen"
      from parts p left join builds b on b.id = p.build_id
      where p.shop_id = ? and p.id in (select part_id from chosen union select id from at_home)
-     order by p.created_at desc, p.id desc`,
+     order by "isChosen" desc, p.created_at desc, p.id desc`,
     [orderId, actor.shopId, actor.shopId],
   );
   return { parts: rows, chosen: rows.filter(({ isChosen }) => isChosen).map(({ id }) => id) };

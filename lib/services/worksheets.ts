@@ -15,6 +15,8 @@ import { findPreset } from '@/lib/domain/builds/presets';
 import { operationByKey } from '@/lib/domain/operations/catalogue';
 import type { House } from '@/lib/domain/operations/house';
 import type { ReleasedLine } from '@/lib/domain/orders/commands';
+import { standsAlready } from '@/lib/domain/orders/deeds/sizes';
+import type { Facts } from '@/lib/domain/orders/facts';
 import {
   type CutFeature,
   type MadeOfCut,
@@ -117,6 +119,16 @@ export function previewOf(
   if (!worked) return [];
   const atHand = { operation: operationByKey(sheet.operation), made, figures: filled.figures };
   return madeOfCut(cut, { lineId: sheet.lineId, sizes: worked.sizes }, atHand);
+}
+
+/** Whether a sheet says what stands already; one that is begun and not finished does not. */
+export function isReleased(
+  facts: Facts,
+  sheet: Pick<WorksheetRow, 'lineId' | 'operation' | 'raw' | 'made'>,
+  from: { readonly unit: Actor['unit']; readonly house: House },
+): boolean {
+  const line = releasedLine(sheet.lineId, sheet, { ...from, made: madeOf(sheet) });
+  return line !== null && standsAlready(facts, line);
 }
 
 /** Says what was decided about features past size. @throws AppError invalid when that is still open. */

@@ -104,7 +104,9 @@ function PartnerDeeds({ partner, actor }: { partner: PartnerRow; actor: Actor })
               hint="Only your own people see it."
               defaultValue={partner.note}
             />
-            <Submit kind="ghost">Keep the note</Submit>
+            <div>
+              <Submit kind="ghost">Keep the note</Submit>
+            </div>
           </Form>
         )}
         {can(actor, 'partners') &&

@@ -39,8 +39,7 @@ const SAYINGS: Readonly<Record<string, Say>> = {
     `restamped one of the ${text(kind)}: ${text(from)} is ${text(to)} now${because(words)}`,
   'order.hold': ({ words, waitsFor }) =>
     `put a hold on, waiting for the ${waitsFor === 'sender' ? 'rebuilder' : 'machine shop'}: ${text(words)}`,
-  'order.raise_snag': ({ words, proposal, priceMinor, days }) =>
-    `raised a snag: ${text(words)}. Proposes: ${text(proposal)}${Number(priceMinor) > 0 ? `, ${money(priceMinor)} more` : ''}${Number(days) > 0 ? `, ${text(days)} working days more` : ''}`,
+  'order.raise_snag': (payload) => `raised a snag: ${sayProposal(payload)}`,
   'order.start': ({ line }) => `put it on the machine: ${text(line)}`,
   'order.answer_stop': ({ rev, cut }) => {
     const already = list(cut).map((one) => `${text(one['feature'])} at ${text(one['text'])}`);
@@ -68,6 +67,13 @@ const DECISIONS = {
   send_back: 'sent back',
   reject: 'rejected',
 } as const;
+
+/** What was met, what is proposed, and what it would add. */
+export function sayProposal({ words, proposal, priceMinor, days }: Payload): string {
+  const price = Number(priceMinor) > 0 ? `, ${money(priceMinor)} more` : '';
+  const time = Number(days) > 0 ? `, ${text(days)} working ${Number(days) === 1 ? 'day' : 'days'} more` : '';
+  return `${text(words).replace(/[.\s]+$/, '')}. Proposes: ${text(proposal)}${price}${time}`;
+}
 
 /** What happened, in words that follow the name of who did it. */
 export function sayEvent(type: string, payload: Payload, unit: LengthUnit): string {

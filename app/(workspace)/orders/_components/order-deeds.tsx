@@ -2,7 +2,6 @@ import { randomUUID } from 'node:crypto';
 import type { ReactNode } from 'react';
 import {
   answerHoldAction,
-  answerSnagAction,
   changeAction,
   discardAction,
   endAction,
@@ -12,6 +11,7 @@ import {
   sendAction,
   setReferenceAction,
 } from '@/app/(workspace)/orders/[orderId]/actions';
+import { Snag } from '@/app/(workspace)/orders/_components/snag';
 import { SelectField, TextArea, TextField } from '@/components/forms/fields';
 import { Form, Submit } from '@/components/forms/form';
 import { PhotoPicker } from '@/components/thread/photo-picker';
@@ -52,40 +52,7 @@ export function OrderDeeds({ view }: { view: OrderView }) {
         </Sheet>
       )}
       {facts.snags.map((snag) => (
-        <Sheet key={snag.id} title="Snag">
-          <Form
-            action={answerSnagAction}
-            {...withHidden(carried(), { snagId: snag.id })}
-            className="grid gap-3"
-            label="Answer the snag"
-          >
-            <TextArea name="words" label={snag.state === 'asked' ? 'Your answer' : 'What you want to say'} />
-            {side === 'sender' && snag.state !== 'approved' && (
-              <div className="flex flex-wrap gap-2">
-                <Submit name="answer" value="approve">
-                  Approve
-                </Submit>
-                <Submit name="answer" value="approve_sizes">
-                  Approve, new sizes follow
-                </Submit>
-                <Submit kind="ghost" name="answer" value="ask">
-                  Ask
-                </Submit>
-                <Submit kind="stop" name="answer" value="carry_on">
-                  Decline, carry on
-                </Submit>
-                <Submit kind="stop" name="answer" value="stop">
-                  Decline, stop
-                </Submit>
-              </div>
-            )}
-            {side === 'partner' && snag.state === 'asked' && (
-              <Submit name="answer" value="reply">
-                Answer
-              </Submit>
-            )}
-          </Form>
-        </Sheet>
+        <Snag key={snag.id} snag={snag} view={view} />
       ))}
       {facts.holds.map((hold) => (
         <Sheet key={hold.id} title="Hold" note={hold.words}>

@@ -12,7 +12,7 @@ export const SIZES_DEEDS: Deeds<'release' | 'repeat_back'> = {
     const wrong = releaseProblem(facts, command);
     if (wrong !== null) return no(wrong);
     const number = (facts.latestRev ?? 0) + 1;
-    const changed = command.lines.filter((line) => !stands(facts, line));
+    const changed = command.lines.filter((line) => !standsAlready(facts, line));
     if (changed.length === 0) return no('These sizes stand already.');
     const keptLines = facts.lines.filter(
       (line) =>
@@ -94,8 +94,8 @@ function releaseProblem(facts: Facts, { lines, reason }: CommandOf<'release'>): 
   return null;
 }
 
-/** Whether a line's sizes are the ones that stand already. */
-function stands(facts: Facts, line: ReleasedLine): boolean {
+/** Whether a line's sizes are the ones that stand already: there is nothing to release then. */
+export function standsAlready(facts: Facts, line: Pick<ReleasedLine, 'lineId' | 'sizes'>): boolean {
   const own = facts.sizes.filter((size) => size.lineId === line.lineId);
   return (
     own.length === line.sizes.length &&

@@ -9,7 +9,7 @@ import type { OrderView } from '@/db/read-models/order-page';
 import type { SizesView } from '@/db/read-models/order-sizes';
 import type { LengthUnit } from '@/lib/domain/quantity/length';
 import { type CutFeature, PAST_DECISIONS } from '@/lib/domain/sizes/already-cut';
-import { previewOf } from '@/lib/services/worksheets';
+import { isReleased, previewOf } from '@/lib/services/worksheets';
 
 interface SheetsProps {
   view: OrderView;
@@ -21,9 +21,11 @@ interface SheetsProps {
 /** The sender's sheets, what they make of what is cut already, and the release. */
 export function Sheets({ view, sizes, cut: alreadyCut, unit }: SheetsProps) {
   const { facts, allowed } = view;
-  const begun = sizes.sheets.some((sheet) => Object.values(sheet.raw).some((text) => text !== ''));
+  const from = { unit, house: view.house };
+  const begun = sizes.sheets.filter((sheet) => Object.values(sheet.raw).some((text) => text !== ''));
+  const hasNews = begun.some((sheet) => !isReleased(facts, sheet, from));
   const isCut = facts.lines.some((line) => line.started);
-  const made = sizes.sheets.flatMap((sheet) => previewOf(alreadyCut, sheet, { unit, house: view.house }));
+  const made = begun.flatMap((sheet) => previewOf(alreadyCut, sheet, from));
   return (
     <section className="mb-6 border-b border-rule pb-6">
       <h2 className="mb-2">Work out the sizes</h2>
@@ -48,7 +50,7 @@ export function Sheets({ view, sizes, cut: alreadyCut, unit }: SheetsProps) {
           </li>
         ))}
       </ul>
-      {allowed.includes('release') && begun && (
+      {allowed.includes('release') && hasNews && (
         <Form
           action={releaseAction}
           requestKey={randomUUID()}
